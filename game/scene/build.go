@@ -33,6 +33,11 @@ func (s *Scene) StrokeClosed(pts []Point, width float64, c Color) {
 	s.put(Op{Kind: OpStroke, W: width, Color: c, Closed: true}, pts...)
 }
 
+// StrokeDashed draws a polyline in dashes and gaps of these lengths.
+func (s *Scene) StrokeDashed(pts []Point, width, dash, gap float64, c Color) {
+	s.put(Op{Kind: OpStroke, W: width, Dash: dash, Gap: gap, Color: c}, pts...)
+}
+
 // Line draws one segment.
 func (s *Scene) Line(x0, y0, x1, y1, width float64, c Color) {
 	s.put(Op{Kind: OpStroke, W: width, Color: c}, Point{x0, y0}, Point{x1, y1})

@@ -64,6 +64,8 @@ type Op struct {
 	Color2   Color
 	Rect     Rect
 	W        float64
+	Dash     float64 // OpStroke: length of a dash and of the gap after it, logical pixels; 0: an unbroken line
+	Gap      float64
 	P0, P1   int
 	T0, T1   int
 }
