@@ -66,17 +66,17 @@ type ActionKind uint8
 
 // The actions.
 const (
-	Tap       ActionKind = iota // released inside, without having moved more than the slop
-	DoubleTap                   // follows the second Tap
-	DragStart
-	DragMove
-	DragEnd
-	DragCancel // pointer cancelled: the value of the drag's start comes back
-	Scroll     // region ID scrolls by DX, DY
-	Press      // key on the focused control ID ("" none): Key, Rune
-	Focus
-	Slide // slider ID asked to go to Value (keys, assistive technology)
-	Type  // free text of ID is now Text
+	Tap        ActionKind = iota // released inside; by keyboard (Key is set) or from the outside, at the middle of Bounds
+	DoubleTap                    // follows the second Tap; on a slider also Enter, Space or Activate: asks for an exact value
+	DragStart                    // the slop is passed; X - X0 is what lies beyond it, so that nothing jumps
+	DragMove                     // moves of one pointer that follow one another in a batch are merged into one
+	DragEnd                      // the last move and the release
+	DragCancel                   // cancelled or its control vanished: the value of the drag's start comes back
+	Scroll                       // region ID: its scroll offset grows by DX, DY; the app clamps
+	Press                        // key on the focused control ID ("" none): Key, Rune
+	Focus                        // ID ("" none) has the focus now
+	Slide                        // slider ID asked to go to Value, already within Min..Max (keys, assistive technology)
+	Type                         // free text of ID is now Text
 )
 
 // Action is an intent on one control.
@@ -84,7 +84,7 @@ type Action struct {
 	Kind   ActionKind
 	ID     string
 	X, Y   float64 // where the pointer is
-	X0, Y0 float64 // where it went down
+	X0, Y0 float64 // where it went down; in drags moved on by the slop, towards where it went
 	DX, DY float64 // since the last action of this gesture
 	Key    Key
 	Rune   rune
