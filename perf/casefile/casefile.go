@@ -2,14 +2,6 @@
 // of the computation whose names carry units.
 package casefile
 
-import (
-	"errors"
-
-	"levelspan/perf"
-)
-
-var errNotYet = errors.New("casefile: not written yet")
-
 // Case is one aeroplane, its conditions today, what is believed of it and its runs, as the file holds them.
 type Case struct {
 	Aeroplane   Aeroplane
@@ -18,10 +10,11 @@ type Case struct {
 	Instruments Instruments
 	Runs        []Run
 	Display     Display
-	// unexported: unknown keys, kept for Marshal
+	extra       string // keys that this program does not know, as compact JSON members; likewise in the parts
 }
 
-// The parts of a case. A nil *float64 is a JSON null or an absent optional key.
+// The parts of a case. A nil *float64 is a JSON null or an absent optional key. The figures are in the unit that the
+// field's name ends with; the table in fields_*.go gives each one's meaning, range and default.
 type (
 	Aeroplane struct {
 		Name, Note                 string
@@ -35,11 +28,16 @@ type (
 		Battery                    *Battery
 		Placards                   Placards
 		Calibration                []Calibration
+		extra                      string
 	}
-	Polar         struct{ CD0, OswaldE, CLMinDrag float64 }
+	Polar struct {
+		CD0, OswaldE, CLMinDrag float64
+		extra                   string
+	}
 	Configuration struct {
 		Name            string
 		CLMax, DeltaCD0 float64
+		extra           string
 	}
 	Engine struct {
 		Kind                        string // piston | turboprop | electric
@@ -53,9 +51,14 @@ type (
 		ThermalPowerW               *float64
 		SpecificConsumptionKgPerKWh float64
 		ConsumptionTable            []ConsumptionPoint // optional addition to the contract
+		extra                       string
 	}
-	ConsumptionPoint struct{ PowerFraction, KgPerKWh float64 }
-	Propeller        struct {
+	ConsumptionPoint struct {
+		PowerFraction, KgPerKWh float64
+		extra                   string
+	}
+	// Propeller keeps the numbers of every kind; only those of Kind count. A number of another kind that is 0 is absent.
+	Propeller struct {
 		Kind                   string // constant-efficiency | constant-speed | fixed-pitch | table
 		Efficiency             float64
 		DiameterM              float64
@@ -67,15 +70,30 @@ type (
 		AdvanceRatio           []float64
 		ThrustCoefficient      []float64
 		PowerCoefficient       []float64
+		extra                  string
 	}
-	Fuel        struct{ UsableKg float64 }
-	Battery     struct{ UsableKWh float64 }
-	Placards    struct{ VNECASMps, VNETASMps, VNOCASMps, VACASMps, VFECASMps *float64 }
+	Fuel struct {
+		UsableKg      float64
+		DensityKgPerL *float64 // optional addition: for showing fuel by volume
+		extra         string
+	}
+	Battery struct {
+		UsableKWh float64
+		extra     string
+	}
+	Placards struct {
+		VNECASMps, VNETASMps, VNOCASMps, VACASMps, VFECASMps *float64
+		extra                                                string
+	}
 	Calibration struct {
 		Configuration string
 		Points        []CalibrationPoint
+		extra         string
 	}
-	CalibrationPoint struct{ IASMps, CASMinusIASMps float64 }
+	CalibrationPoint struct {
+		IASMps, CASMinusIASMps float64
+		extra                  string
+	}
 
 	Today struct {
 		MassKg                 float64
@@ -87,16 +105,27 @@ type (
 		PowerFraction          float64
 		HeadwindMps            float64
 		FuelKg                 float64
+		ChargeKWh              *float64 // optional addition: charge left in the battery; nil: all that is usable
 		ReserveMin             float64
 		FieldElevationM        *float64 // optional addition: for the mark on the rail and the QNH way of entry
 		AltimeterSettingHPa    *float64 // optional addition
 		ClimbGradient          *float64 // optional addition: asked for in the allowances
 		AirFrom                string   // optional addition: "pressure-altitude" (default) | "field" | "density-altitude": how the person enters the air
+		extra                  string
 	}
-	Beliefs     struct{ CD0, OswaldE, CLMax, Power, Propeller, PositionErrorMps float64 }
-	Instruments struct{ IASMps, RateMps, Power, RPM, Mass, TemperatureC, AltitudeM float64 }
-	Leg         struct{ GroundSpeedMps, TrackDeg float64 }
-	Run         struct {
+	Beliefs struct {
+		CD0, OswaldE, CLMax, Power, Propeller, PositionErrorMps float64
+		extra                                                   string
+	}
+	Instruments struct {
+		IASMps, RateMps, Power, RPM, Mass, TemperatureC, AltitudeM float64
+		extra                                                      string
+	}
+	Leg struct {
+		GroundSpeedMps, TrackDeg float64
+		extra                    string
+	}
+	Run struct {
 		Kind                   string // level | climb | glide | stall | gps-legs
 		Configuration          string
 		IASMps                 float64
@@ -109,6 +138,7 @@ type (
 		Propeller              string // glide: stopped | windmilling | feathered
 		Legs                   []Leg
 		LeftOut                string
+		extra                  string
 	}
 	// Display is how the person wants figures shown; an optional addition to the contract.
 	Display struct {
@@ -118,42 +148,8 @@ type (
 		Mass      string // kg | lb
 		Power     string // kW | hp
 		Fuel      string // kg | L | US gal
+		Length    string // m | ft: wing and propeller
+		Selected  string // key of the limit marked on the chart, "" none
+		extra     string
 	}
 )
-
-// Fault is one thing wrong with a file: the key's path ("aeroplane.wing_area_m2", "runs[3].ias_mps"), the value as written, what is allowed.
-type Fault struct{ Path, Value, Allowed string }
-
-// Faults is a list of them, as an error; Error prints one line a fault.
-type Faults []Fault
-
-func (f Faults) Error() string { return "" }
-
-// Warning is something kept but not understood (an unknown key).
-type Warning struct{ Path, Text string }
-
-// Parse reads a case file. The error is Faults, a *VersionError, or a *SyntaxError (with line and column).
-func Parse(data []byte) (*Case, []Warning, error) { return nil, nil, errNotYet }
-
-// Marshal writes the canonical form: keys in the contract's order, unknown ones kept after them, two-space indent, one final newline.
-func (c *Case) Marshal() []byte { return nil }
-
-// Clone is a deep copy.
-func (c *Case) Clone() *Case { return nil }
-
-// Validate reports every fault of c as Faults, or nil.
-func (c *Case) Validate() error { return errNotYet }
-
-// Model gives what perf computes with. It fails only where Validate would.
-func (c *Case) Model() (perf.Aeroplane, perf.Condition, error) {
-	return perf.Aeroplane{}, perf.Condition{}, errNotYet
-}
-
-// Fragment is the share link's fragment: a version letter and deflate + base64url of the canonical form.
-func (c *Case) Fragment() string { return "" }
-
-// ParseFragment reads a fragment in bounded memory. A "#", "#case=" or whole address before it is allowed.
-func ParseFragment(s string) (*Case, []Warning, error) { return nil, nil, errNotYet }
-
-// Schema is the JSON Schema (draft 2020-12) of the case file.
-func Schema() []byte { return nil }
