@@ -1,0 +1,109 @@
+'use strict';
+// Probe, unpack, start. Runs last; levelspan and Go are there already.
+(async () => {
+  const L = globalThis.levelspan;
+  const byId = id => document.getElementById(id);
+  const root = document.documentElement;
+  const says = text => { byId('levelspan-state').textContent = text; };
+  const bar = part => { byId('levelspan-progress').value = part; };
+  const breathe = () => new Promise(done => setTimeout(done, 0));
+  const problem = (title, ...lines) => {
+    const box = byId('levelspan-problem');
+    const h = document.createElement('h2');
+    h.textContent = title;
+    box.replaceChildren(h, ...lines.map(t => { const p = document.createElement('p'); p.textContent = t; return p; }));
+    box.hidden = false;
+    byId('levelspan-load').hidden = true;
+    root.dataset.problem = title;
+  };
+  const otherwise = 'The command levelspan limits CASE.json and the desktop window give the same figures without a browser.';
+
+  // What this browser has.
+  const wanted = new URLSearchParams(location.search).get('surface') || 'webgl';
+  if (typeof WebAssembly !== 'object') {
+    problem('This browser runs no WebAssembly', 'levelspan is a WebAssembly program. Browsers leave it out in lockdown or enhanced-security modes; ' +
+      'switch that off for this page, or use another browser.', otherwise);
+    return;
+  }
+  if (wanted === 'software') {
+    problem('This version has no software surface', 'The address asks for surface=software. Leave that out to draw with WebGL.', otherwise);
+    return;
+  }
+  const probe = options => {
+    try {
+      const g = document.createElement('canvas').getContext('webgl2', options);
+      if (!g) return false;
+      const x = g.getExtension('WEBGL_lose_context');
+      if (x) x.loseContext();
+      return true;
+    } catch (e) { return false; }
+  };
+  if (!probe({})) {
+    problem('This browser gives no WebGL2', 'levelspan draws with WebGL2. It is missing where graphics acceleration is switched off, ' +
+      'blocked by policy, or where there is no working graphics driver.', otherwise);
+    return;
+  }
+
+  // The program's bytes: inside this page, or beside it.
+  const inline = byId('levelspan-program');
+  const inflate = async (packed, size) => {
+    if (typeof DecompressionStream !== 'function') throw new Error('the browser has no DecompressionStream (too old)');
+    const reader = new Blob([packed]).stream().pipeThrough(new DecompressionStream('gzip')).getReader();
+    const bytes = new Uint8Array(size);
+    for (let at = 0; ;) {
+      const {done, value} = await reader.read();
+      if (done) { if (at !== size) throw new Error('the program is damaged: ' + at + ' of ' + size + ' bytes'); return bytes; }
+      bytes.set(value, at);
+      at += value.length;
+      bar(0.2 + 0.5 * at / size);
+    }
+  };
+  const decode = text => {
+    if (Uint8Array.fromBase64) return Uint8Array.fromBase64(text);
+    const s = atob(text), bytes = new Uint8Array(s.length);
+    for (let i = 0; i < s.length; i++) bytes[i] = s.charCodeAt(i);
+    return bytes;
+  };
+  const fromPage = async imports => {
+    says('Unpacking the program');
+    await breathe();
+    const packed = decode(inline.textContent.trim()), size = +inline.dataset.size;
+    inline.remove();
+    bar(0.2);
+    const bytes = await inflate(packed, size);
+    says('Starting the program');
+    await breathe();
+    return (await WebAssembly.instantiate(bytes, imports)).instance;
+  };
+  const fromSite = async imports => {
+    const link = byId('levelspan-source'), size = +link.dataset.size;
+    const answer = await fetch(link.dataset.href);
+    if (!answer.ok) throw new Error('the server answered ' + answer.status);
+    let at = 0;
+    const count = new TransformStream({transform(chunk, to) { at += chunk.length; bar(0.8 * at / size); to.enqueue(chunk); }});
+    const counted = new Response(answer.body.pipeThrough(count), {headers: {'content-type': 'application/wasm'}});
+    if (WebAssembly.instantiateStreaming) return (await WebAssembly.instantiateStreaming(counted, imports)).instance;
+    return (await WebAssembly.instantiate(await counted.arrayBuffer(), imports)).instance;
+  };
+
+  // What the program prints before it dies is kept for the message.
+  const write = globalThis.fs.writeSync, words = new TextDecoder();
+  globalThis.fs.writeSync = (fd, bytes) => {
+    L.log = (L.log + words.decode(bytes)).slice(-8192);
+    return write.call(globalThis.fs, fd, bytes);
+  };
+  const go = new Go();
+  go.argv = ['levelspan', root.dataset.version];
+  go.env = {GOGC: '300'};
+  go.exit = code => L.fail('The program ended with code ' + code + '.');
+  try {
+    const instance = await (inline ? fromPage : fromSite)(go.importObject);
+    bar(0.85);
+    says('Starting the program');
+    await breathe();
+    L.unavailable = why => problem('The drawing could not start', why, otherwise);
+    go.run(instance).then(() => L.fail('The program ended.'), e => L.fail(String(e)));
+  } catch (e) {
+    problem('The program did not load', String(e.message || e), 'Reload the page. If that does not help, download it again.', otherwise);
+  }
+})();

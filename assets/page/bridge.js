@@ -1,0 +1,213 @@
+'use strict';
+// globalThis.levelspan: all that the program asks of the browser. Whatever can throw is caught here, because an
+// exception that unwinds through the program would leave it wrecked.
+(() => {
+  const byId = id => document.getElementById(id);
+  const L = globalThis.levelspan = {log: '', dead: false};
+
+  // The queue. An event is WIDTH numbers; -1 or the index of a string where it carries text. See wasm/wire.go.
+  const WIDTH = 14, MOST = 512, HEAD = 8;
+  const queue = new Float64Array(HEAD + WIDTH * MOST);
+  L.bytes = new Uint8Array(queue.buffer);
+  let count = 0, strings = [], files = [];
+  let wake = null;
+  L.onwake = f => { wake = f; };
+  L.wake = () => { if (wake && !L.dead) wake(); };
+  const text = s => s === undefined ? -1 : strings.push(String(s)) - 1;
+
+  // push notes one event and asks for a frame. A queue that is full drops moves and keeps what ends a gesture.
+  L.push = (kind, e = {}) => {
+    if (L.dead) return;
+    if (count === MOST) {
+      const at = oldestMove();
+      if (at < 0) return;
+      queue.copyWithin(HEAD + at * WIDTH, HEAD + (at + 1) * WIDTH, HEAD + count * WIDTH);
+      count--;
+    }
+    const v = [kind, e.pointer || 0, e.touch ? 1 : 0, e.x || 0, e.y || 0, e.dx || 0, e.dy || 0, e.key || 0,
+      e.rune || 0, e.shift ? 1 : 0, e.value || 0, e.time || performance.now(), text(e.id), text(e.text)];
+    queue.set(v, HEAD + count * WIDTH);
+    count++;
+    L.wake();
+  };
+  const oldestMove = () => {
+    for (let i = 0; i < count; i++) if (queue[HEAD + i * WIDTH] === L.MOVE || queue[HEAD + i * WIDTH] === L.WHEEL) return i;
+    return -1;
+  };
+  Object.assign(L, {DOWN: 0, MOVE: 1, UP: 2, CANCEL: 3, WHEEL: 4, KEY: 5, FOCUS: 6, ACTIVATE: 7, VALUE: 8, TEXT: 9,
+    FILE: 100, LINK: 101, NOTICE: 102, FAILURE: 103});
+
+  // drain fills the head (insets, palette) and gives the number of events; the program copies L.bytes next.
+  const dark = window.matchMedia ? matchMedia('(prefers-color-scheme: dark)') : {matches: false};
+  L.drain = () => {
+    const n = count;
+    count = 0;
+    const inset = getInset();
+    queue[0] = inset[0]; queue[1] = inset[1]; queue[2] = inset[2]; queue[3] = inset[3];
+    queue[4] = dark.matches ? 1 : 0;
+    queue[5] = performance.now();
+    return n;
+  };
+  // texts hands over the strings of the events just drained; files stay until read.
+  L.texts = () => { const s = strings; strings = []; return s; };
+  L.file = i => { const f = files[i]; files[i] = null; if (files.every(x => !x)) files = []; return f; };
+
+  // Safe-area insets, read again only after a change of size.
+  let insets = null;
+  const getInset = () => {
+    if (insets) return insets;
+    try {
+      const s = getComputedStyle(byId('levelspan-inset'));
+      insets = [s.paddingTop, s.paddingRight, s.paddingBottom, s.paddingLeft].map(x => parseFloat(x) || 0);
+    } catch (e) { insets = [0, 0, 0, 0]; }
+    return insets;
+  };
+  addEventListener('resize', () => { insets = null; }, true);
+
+  // Clipboard, with the text always left in the mirror, and shown where the browser refuses.
+  L.copy = (what, value) => {
+    byId('levelspan-copied').textContent = value;
+    const done = () => L.push(L.NOTICE, {text: what + ' copied'});
+    const byHand = () => { if (byCommand(value)) done(); else showCopy(value); };
+    try { navigator.clipboard.writeText(value).then(done, byHand); } catch (e) { byHand(); }
+  };
+  const byCommand = value => {
+    const back = document.activeElement;
+    const area = document.createElement('textarea');
+    try {
+      area.value = value;
+      area.readOnly = true;
+      area.style.position = 'fixed';
+      area.style.opacity = '0';
+      document.body.append(area);
+      area.select();
+      area.setSelectionRange(0, value.length);
+      return document.execCommand('copy');
+    } catch (e) { return false; } finally {
+      area.remove();
+      if (back && back.focus) back.focus({preventScroll: true});
+    }
+  };
+  const showCopy = value => {
+    const box = byId('levelspan-copy'), area = box.querySelector('textarea'), back = document.activeElement;
+    area.value = value;
+    box.hidden = false;
+    area.focus();
+    area.select();
+    const close = () => { box.hidden = true; if (back && back.focus) back.focus({preventScroll: true}); };
+    box.querySelector('button').onclick = close;
+    box.onkeydown = e => { if (e.key === 'Escape') close(); };
+  };
+
+  // Files in: the picker and drops. Out: a download, or the share sheet where a home-screen app has no downloads.
+  const LARGEST = 4 << 20;
+  const take = file => {
+    const bad = why => L.push(L.FILE, {id: file.name, text: why, value: -1});
+    if (file.size > LARGEST) { bad('larger than 4 MB: not a case file'); return; }
+    const reader = new FileReader();
+    reader.onload = () => L.push(L.FILE, {id: file.name, value: files.push(new Uint8Array(reader.result)) - 1});
+    reader.onerror = () => bad('the browser could not read it');
+    reader.readAsArrayBuffer(file);
+  };
+  L.pick = () => {
+    try {
+      const input = document.createElement('input');
+      input.type = 'file';
+      input.accept = '.json,application/json';
+      input.onchange = () => { if (input.files[0]) take(input.files[0]); };
+      input.click();
+    } catch (e) { L.push(L.FAILURE, {text: 'The browser did not open its file picker: ' + e.message}); }
+  };
+  addEventListener('dragover', e => e.preventDefault());
+  addEventListener('drop', e => {
+    e.preventDefault();
+    if (e.dataTransfer && e.dataTransfer.files[0]) take(e.dataTransfer.files[0]);
+  });
+  L.save = (name, mime, bytes) => {
+    const copy = bytes.slice(), said = () => L.push(L.NOTICE, {text: name + ' saved'});
+    const failed = e => L.push(L.FAILURE, {text: 'Not saved: ' + e.message + '. Share the case as a link instead.'});
+    try {
+      if (navigator.standalone && navigator.canShare) {
+        const file = new File([copy], name, {type: mime});
+        if (navigator.canShare({files: [file]})) {
+          navigator.share({files: [file]}).then(said, e => { if (e.name !== 'AbortError') failed(e); });
+          return;
+        }
+      }
+      const url = URL.createObjectURL(new Blob([copy], {type: mime}));
+      const a = document.createElement('a');
+      a.href = url;
+      a.download = name;
+      a.hidden = true;
+      document.body.append(a);
+      a.click();
+      a.remove();
+      setTimeout(() => URL.revokeObjectURL(url), 60000);
+      said();
+    } catch (e) { failed(e); }
+  };
+
+  // Links.
+  L.base = () => { try { return location.href.replace(/#.*$/, ''); } catch (e) { return ''; } };
+  const followHash = () => { if (/^#case=/.test(location.hash)) L.push(L.LINK, {text: location.hash}); };
+  addEventListener('hashchange', followHash);
+  followHash();
+
+  // The end: cover everything, so that no figure stays readable.
+  L.fail = why => {
+    if (L.dead) return;
+    L.dead = true;
+    const box = byId('levelspan-stop');
+    box.querySelector('pre').textContent = why + (L.log ? '\n\n' + L.log : '');
+    box.querySelector('button').onclick = () => location.reload();
+    for (const c of document.querySelectorAll('canvas')) c.style.visibility = 'hidden';
+    for (const id of ['levelspan-page', 'levelspan-shell', 'levelspan-copy']) byId(id).hidden = true;
+    document.documentElement.removeAttribute('data-ready');
+    box.hidden = false;
+    box.querySelector('button').focus();
+  };
+  addEventListener('error', e => {
+    if (/^ResizeObserver loop/.test(e.message)) return; // a late layout, not a fault
+    L.fail(e.message || 'an error without a message');
+  });
+  addEventListener('unhandledrejection', e => L.fail(String(e.reason)));
+
+  // The drawing library reloads the page when the graphics context is lost, and with it goes the work: stop that.
+  addEventListener('webglcontextlost', e => {
+    if (!e.target.isConnected) return;
+    e.stopImmediatePropagation();
+    e.preventDefault();
+    if (L.onlost) L.onlost();
+    else L.fail('The browser took the graphics context away. This happens when a tablet sleeps or runs short of memory.');
+  }, true);
+
+  // adopt tidies up after the drawing library's start: its canvas is out of the way of focus and of screen readers,
+  // the page's own viewport counts, and a change of size that sends no event still arrives.
+  L.adopt = () => {
+    for (const c of document.querySelectorAll('body>canvas')) {
+      c.removeAttribute('tabindex');
+      c.setAttribute('aria-hidden', 'true');
+    }
+    const metas = document.querySelectorAll('meta[name=viewport]');
+    for (let i = 1; i < metas.length; i++) metas[i].remove();
+    let w = innerWidth, h = innerHeight;
+    addEventListener('resize', () => { w = document.body.clientWidth; h = document.body.clientHeight; }, true);
+    const look = () => {
+      if (document.body.clientWidth !== w || document.body.clientHeight !== h) dispatchEvent(new Event('resize'));
+    };
+    if (window.ResizeObserver) new ResizeObserver(look).observe(document.body);
+    if (window.visualViewport) visualViewport.addEventListener('resize', look);
+  };
+
+  // ready says that the first chart has been drawn; it is on screen with the browser's next frame.
+  L.ready = surface => {
+    byId('levelspan-page').hidden = false;
+    requestAnimationFrame(() => {
+      if (L.dead) return;
+      byId('levelspan-shell').hidden = true;
+      document.documentElement.dataset.surface = surface;
+      document.documentElement.dataset.ready = 'true';
+      try { performance.mark('levelspan-first-chart'); } catch (e) { /* the mark is for measuring only */ }
+    });
+  };
+})();
