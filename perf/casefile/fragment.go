@@ -90,6 +90,7 @@ func ParseFragment(s string) (*Case, []Warning, error) {
 
 const (
 	cutShort = "it has been cut short; copy the whole of it"
+	tooMuch  = "it unpacks to more than 1 MiB"
 	damaged  = "it has been damaged on the way; copy it again"
 )
 
@@ -100,7 +101,7 @@ func unpack(packed []byte) (text []byte, reason string) {
 	buffer := make([]byte, 0, min(maxFragmentCase+1, 16*len(packed)+512))
 	for {
 		if len(buffer) > maxFragmentCase {
-			return nil, "it unpacks to more than 1 MiB"
+			return nil, tooMuch
 		}
 		if len(buffer) == cap(buffer) {
 			buffer = append(buffer, 0)[:len(buffer)]
@@ -109,6 +110,9 @@ func unpack(packed []byte) (text []byte, reason string) {
 		buffer = buffer[:len(buffer)+n]
 		if err == nil {
 			continue
+		}
+		if len(buffer) > maxFragmentCase {
+			return nil, tooMuch
 		}
 		var corrupt flate.CorruptInputError
 		switch left := in.Len(); {

@@ -268,7 +268,7 @@ func (f *Field) holdsText(s, kind string) bool {
 				return true
 			}
 		}
-		return s == "" && len(f.Kinds) > 0 && !f.Applies(kind)
+		return s == "" && f.Required && len(f.Kinds) > 0 && !f.Applies(kind)
 	}
 	if !utf8.ValidString(s) {
 		return false
@@ -279,7 +279,7 @@ func (f *Field) holdsText(s, kind string) bool {
 	blank := f.Min > 0
 	for _, r := range s {
 		if unicode.IsControl(r) || r == '\u2028' || r == '\u2029' {
-			if r != '\n' && r != '\t' || f.Max < 500 {
+			if r != '\n' && r != '\t' || !f.long() {
 				return false
 			}
 		}
@@ -287,6 +287,9 @@ func (f *Field) holdsText(s, kind string) bool {
 	}
 	return !blank
 }
+
+// long reports whether a text may have several lines.
+func (f *Field) long() bool { return f.Max >= 500 }
 
 // plainNumber writes any float, also those that JSON does not know.
 func plainNumber(x float64) string {
