@@ -98,10 +98,15 @@ func (f *Frame) Outline(r scene.Rect, radius, width float64, c scene.Color) {
 	f.Scene.StrokeClosed(pts[:], width, c)
 }
 
-// Box fills a rectangle with round corners and a thin edge inside it.
+// Box fills a rectangle with round corners and a thin edge inside it, on whole pixels.
 func (f *Frame) Box(r scene.Rect, radius float64, face, edge scene.Color) {
+	f.boxed(r, radius, 1, face, edge)
+}
+
+func (f *Frame) boxed(r scene.Rect, radius, width float64, face, edge scene.Color) {
+	r = Snap(r)
 	f.Scene.FillRect(r, radius, edge)
-	f.Scene.FillRect(Inset(r, 1.25), math.Max(0, radius-1.25), face)
+	f.Scene.FillRect(Inset(r, width), math.Max(0, radius-width), face)
 }
 
 // Baseline is the baseline that centres capitals and digits of a style in r.

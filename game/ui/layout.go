@@ -46,17 +46,32 @@ func CutRight(r scene.Rect, d float64) (strip, rest scene.Rect) {
 	return strip, rest
 }
 
-// Cell is one cell of a grid over r with gaps between columns and rows; column and row count from 0.
+// Cell is one cell of a grid over r with gaps between columns and rows; column and row count from 0. Its edges are
+// whole pixels if r's are, so that all cells look alike; their sizes may differ by one.
 func Cell(r scene.Rect, columns, rows, column, row int, gap float64) scene.Rect {
-	w := (r.W - gap*float64(columns-1)) / float64(max(1, columns))
-	h := (r.H - gap*float64(rows-1)) / float64(max(1, rows))
-	return scene.Rect{X: r.X + float64(column)*(w+gap), Y: r.Y + float64(row)*(h+gap), W: math.Max(0, w), H: math.Max(0, h)}
+	x0, x1 := share(r.W, columns, column, gap)
+	y0, y1 := share(r.H, rows, row, gap)
+	return scene.Rect{X: r.X + x0, Y: r.Y + y0, W: x1 - x0, H: y1 - y0}
+}
+
+// share is the i-th of n parts of a length with gaps between them.
+func share(length float64, n, i int, gap float64) (from, to float64) {
+	step := (length + gap) / float64(max(1, n))
+	from = math.Round(float64(i) * step)
+	to = math.Round(float64(i+1)*step - gap)
+	return from, math.Max(from, to)
+}
+
+// Snap is r with its edges on whole pixels.
+func Snap(r scene.Rect) scene.Rect {
+	x, y := math.Round(r.X), math.Round(r.Y)
+	return scene.Rect{X: x, Y: y, W: math.Round(r.X+r.W) - x, H: math.Round(r.Y+r.H) - y}
 }
 
 // Centered is a rectangle of at most w by h in the middle of r.
 func Centered(r scene.Rect, w, h float64) scene.Rect {
 	w, h = math.Min(w, r.W), math.Min(h, r.H)
-	return scene.Rect{X: r.X + (r.W-w)/2, Y: r.Y + (r.H-h)/2, W: w, H: h}
+	return scene.Rect{X: math.Round(r.X + (r.W-w)/2), Y: math.Round(r.Y + (r.H-h)/2), W: w, H: h}
 }
 
 // Grow is r made larger about its middle until it is at least w by h: how a target becomes touchable.

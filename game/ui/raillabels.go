@@ -118,12 +118,24 @@ func (rl *Rail) markAbove(f *Frame, row *spans, k *RailMark, style scene.Style, 
 		row.take(s.P0, s.P0+scene.Measure(scene.Small, rl.Title)+6)
 	}
 	for _, lo := range [2]float64{x + 5, x - 5 - w} {
-		if lo >= s.P0-4 && lo+w <= right && row.free(lo-3, lo+w+3) {
+		if lo >= s.P0-4 && lo+w <= right && row.free(lo-3, lo+w+3) && !rl.crossed(s, k, lo-3, lo+w+3) {
 			row.take(math.Min(x, lo), math.Max(x, lo+w))
 			f.Scene.Label(style, lo, y-6, scene.Left, k.Text, ink)
 			return
 		}
 	}
+}
+
+// crossed reports whether the line of another mark runs through a stretch.
+func (rl *Rail) crossed(s Scale, k *RailMark, lo, hi float64) bool {
+	for i := range rl.Marks {
+		if o := &rl.Marks[i]; o != k && rl.inRange(o.At) {
+			if x := s.Pos(o.At); x > lo && x < hi {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // heading draws the value over the handle and the title where the value is not.
@@ -188,8 +200,12 @@ func (rl *Rail) valueBlock(f *Frame, area scene.Rect, x, hy float64) (lo, hi flo
 	lh, big := scene.LineHeight(scene.Small), scene.LineHeight(scene.Title)
 	h := big + lh*float64(len(rl.Notes))
 	lo = math.Max(area.Y+rl.titleHeight(), math.Min(area.Y+area.H-h, hy-big/2))
+	style := scene.Title
+	if x+scene.Measure(style, rl.ValueText) > area.X+area.W {
+		style = scene.BodyBold
+	}
 	base := lo + (big+scene.CapHeight(scene.Title))/2
-	f.Scene.Label(scene.Title, x, base, scene.Left, rl.ValueText, rl.valueInk(t))
+	f.Scene.Label(style, x, base, scene.Left, rl.ValueText, rl.valueInk(t))
 	for i, n := range rl.Notes {
 		f.Scene.Label(scene.Small, x, lo+big+lh*float64(i)+(lh+scene.CapHeight(scene.Small))/2, scene.Left, n, t.Muted)
 	}
