@@ -66,7 +66,7 @@ type Engine struct {
 	DropOffConstant      float64            // c of Gagg & Ferrar, piston
 	LapseExponent        float64            // x of sigma^x, turboprop
 	ThermalPower         float64            // W at sea level, turboprop; 0: the same as RatedPower
-	SpecificConsumption  float64            // kg/J of shaft work; 0 for electric
+	SpecificConsumption  float64            // kg/J of shaft work; 0 for electric, or where it is not known (no endurance or distance then)
 	ConsumptionTable     []ConsumptionPoint // rising power fraction; if not empty it replaces SpecificConsumption
 }
 

@@ -39,6 +39,8 @@ const (
 	LevelFlight    Outcome = iota // level flight is possible
 	TooLittlePower                // at every speed at or above the stall the power available is less than the power required
 	PlacardTooSlow                // the never-exceed speed is below the slowest speed of level flight
+	RPMTooHigh                    // there is power enough, but at every speed level flight takes more than the maximum rpm
+	outcomeCount
 )
 
 // Limit is one speed and what belongs to it. Fields that its Key does not use are 0.
@@ -56,7 +58,7 @@ type Limit struct {
 	LeastSinkTAS  TAS     // BestGlide: speed of least sink, power off
 	PowerRequired float64 // LeastPower, BestRange, Carson, FastestLevel: D V, W
 	ShaftPower    float64 // LeastPower, BestRange, Carson, FastestLevel: shaft power that level flight takes there, W
-	Endurance     float64 // LeastPower: s, on all of the fuel or charge, at constant mass, no reserve; 0 where none is given
+	Endurance     float64 // LeastPower: s, on all of the fuel or charge, at constant mass, no reserve; 0 where none is given or the speed cannot be held
 	Distance      float64 // BestRange: m over the ground, likewise
 	FuelFlow      float64 // LeastPower, BestRange, Carson: kg/s (electric: W drawn)
 }
@@ -108,13 +110,14 @@ const (
 	CautionConsumptionUnusual
 	CautionNotModelled
 	CautionAdvisory
+	CautionClimbAboveNeverExceed
 	cautionCount
 )
 
 // Answer is everything the model says of one aeroplane in one condition.
 type Answer struct {
 	Outcome      Outcome
-	Shortfall    float64 // W of thrust power missing at the speed where least is missing; 0 with level flight
+	Shortfall    float64 // W of thrust power missing at the speed where least is missing; 0 with level flight and for PlacardTooSlow
 	ShortfallTAS TAS     // that speed
 	Limits       [KeyCount]Limit
 	Service      Ceiling
