@@ -5,7 +5,6 @@ package app
 import (
 	"time"
 
-	"levelspan/game/scene"
 	"levelspan/game/ui"
 )
 
@@ -70,27 +69,3 @@ type Fact struct {
 	Key, Name, ValueText string
 	Value                float64 // SI
 }
-
-// App is the program. Make it with New.
-type App struct{}
-
-// New starts the program with a case file's bytes (the embedded demo's, if nil).
-func New(host Host, caseFile []byte) *App { return &App{} }
-
-// Step takes in the input and reports whether Scene, Controls or Mirror changed. Nothing in: nothing done.
-func (a *App) Step(in Input) bool { return false }
-
-// Wake is how long the outside may sleep without an event before the next Step; 0: at the next frame; negative: for ever.
-func (a *App) Wake() time.Duration { return -1 }
-
-// Scene is the picture of the present state.
-func (a *App) Scene() *scene.Scene { return nil }
-
-// Controls are the touchable things of that picture.
-func (a *App) Controls() []ui.Control { return nil }
-
-// Mirror is the same in words.
-func (a *App) Mirror() *Mirror { return nil }
-
-// FocusID is the control that has the focus, "" none.
-func (a *App) FocusID() string { return "" }

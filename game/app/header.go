@@ -1,0 +1,71 @@
+package app
+
+import (
+	"math"
+
+	"levelspan/game/scene"
+	"levelspan/game/ui"
+)
+
+// drawHeader draws the aeroplane's name and note, the tabs, undo, redo, share and the menu.
+func (a *App) drawHeader(f *ui.Frame) {
+	t, l := f.Theme, &a.layout
+	back := scene.Rect{X: l.window.X, Y: l.window.Y, W: l.window.W, H: l.header.Y + l.header.H}
+	f.Scene.FillRect(back, 0, t.Bar)
+	if l.format == phone {
+		f.Scene.FillRect(scene.Rect{X: l.window.X, Y: l.tabs.Y, W: l.window.W, H: l.tabs.H}, 0, t.Bar)
+	}
+	bar := ui.Trim(l.header, 0, l.margin-12, 0, l.margin)
+	bar = a.drawTools(f, bar)
+	tabs := []ui.Choice{{ID: "tab/chart", Text: "Chart", Selected: a.view.screen == screenChart},
+		{ID: "tab/aeroplane", Text: "Aeroplane", Selected: a.view.screen == screenAeroplane}}
+	if l.format == phone {
+		ui.TabBar(f, l.tabs, tabs, true)
+	} else {
+		room := 0.0
+		for _, c := range tabs {
+			room += math.Max(ui.MinTarget, math.Ceil(scene.Measure(scene.BodyBold, c.Text)+42))
+		}
+		// beside the middle of the window where the name leaves room
+		x := clamp(0.37*l.safe.W+l.safe.X, bar.X+60, bar.X+bar.W-room)
+		ui.TabBar(f, scene.Rect{X: x, Y: bar.Y, W: math.Min(room, bar.X+bar.W-x), H: bar.H}, tabs, false)
+		bar.W = x - bar.X - 12
+	}
+	c := a.doc.current
+	name := ui.Ellipsis(scene.Title, c.Aeroplane.Name, bar.W)
+	w := scene.Measure(scene.Title, name)
+	f.Label(scene.Title, bar, scene.Left, name, t.Ink)
+	if room := bar.W - w - 14; room > 60 && c.Aeroplane.Note != "" {
+		note := scene.Rect{X: bar.X + w + 14, Y: bar.Y + 1, W: room, H: bar.H}
+		f.Label(scene.Small, note, scene.Left, c.Aeroplane.Note, t.Muted)
+	}
+}
+
+// drawTools draws the buttons at the right end of the header and returns what is left of it.
+func (a *App) drawTools(f *ui.Frame, r scene.Rect) scene.Rect {
+	undo, redo := a.doc.nextUndo(), a.doc.nextRedo()
+	tools := []ui.Button{
+		{ID: "menu", Icon: ui.IconMenu, Label: "Menu"},
+		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share: copy the link", Bold: true},
+		{ID: "redo", Icon: ui.IconRedo, Label: named("Redo", redo), Disabled: redo == ""},
+		{ID: "undo", Icon: ui.IconUndo, Label: named("Undo", undo), Disabled: undo == ""},
+	}
+	for i := range tools {
+		if a.layout.compact || a.layout.safe.W < 900 {
+			tools[i].Text = ""
+			tools[i].Bold = false
+		}
+		var cell scene.Rect
+		cell, r = ui.CutRight(r, tools[i].Width())
+		tools[i].Draw(f, ui.Trim(cell, 2, 0, 2, 0))
+	}
+	r.W = math.Max(0, r.W-8)
+	return r
+}
+
+func named(verb, what string) string {
+	if what == "" {
+		return verb
+	}
+	return verb + " " + what
+}

@@ -1,0 +1,41 @@
+package app
+
+import "levelspan/perf"
+
+// describe brings the mirror up to date with what was drawn.
+func (a *App) describe() {
+	m := &a.mirror
+	m.Title = a.doc.current.Aeroplane.Name
+	m.Screen = "chart"
+	if a.view.screen == screenAeroplane {
+		m.Screen = "aeroplane"
+	}
+	m.Status = a.view.status
+	rows := m.Rows[:0]
+	for i := range a.rows {
+		r := &a.rows[i]
+		l := &a.solved.answer.Limits[r.key]
+		rows = append(rows, MirrorRow{Key: r.key.String(), Name: r.name, Symbol: r.symbol, SetBy: r.setBy, ValueText: r.value, SecondText: r.second,
+			TASMps: float64(l.TAS), CASMps: float64(l.CAS), IASMps: float64(l.IAS), Selected: a.view.marked && a.view.selected == r.key})
+	}
+	m.Rows = rows
+	m.Facts = a.facts()
+}
+
+// summary is the day in one sentence.
+func (a *App) summary() string {
+	ans, u := &a.solved.answer, &a.units
+	where := " at " + u.MassWhole(a.solved.cond.Mass).String() + " and a density altitude of " + u.AltitudeFine(a.solved.cond.Air.DensityAltitude).String() + "."
+	slow, fast := &ans.Limits[perf.SlowestLevel], &ans.Limits[perf.FastestLevel]
+	if ans.Outcome != perf.LevelFlight || !slow.Applies || !fast.Applies {
+		_, lines := a.shortfallWords()
+		s := "No level flight" + where
+		for _, l := range lines {
+			s += " " + l
+		}
+		return s
+	}
+	kind := a.speedKind()
+	return "Level flight from " + u.SpeedWhole(inKind(slow, kind)).Number + " (" + setByName(slow.SetBy) + ") to " +
+		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + setByName(fast.SetBy) + ")" + where
+}

@@ -1,0 +1,256 @@
+package app
+
+import (
+	"math"
+	"strings"
+
+	"levelspan/game/scene"
+	"levelspan/game/ui"
+	"levelspan/perf"
+	"levelspan/perf/casefile/figure"
+)
+
+// The measures of the panel, logical pixels.
+const (
+	panelHead    = 50.0
+	panelFoot    = 30.0 // the advisory line
+	panelLine    = 28.0
+	panelSection = 8.0
+	columnGap    = 24.0
+)
+
+// drawPanel draws the limits in order of speed, ceilings, turn and allowances, and the advisory line.
+func (a *App) drawPanel(f *ui.Frame) {
+	t, r := f.Theme, a.layout.panel
+	f.Scene.FillRect(r, 0, t.Panel)
+	if a.layout.format == landscape {
+		f.Scene.Line(r.X, r.Y, r.X, r.Y+r.H, 1, t.Line)
+	} else {
+		f.Scene.Line(r.X, r.Y, r.X+r.W, r.Y, 1, t.Line)
+	}
+	foot, r := ui.CutBottom(r, panelFoot)
+	a.drawAdvisory(f, foot)
+	head, r := ui.CutTop(r, panelHead)
+	a.drawPanelHead(f, ui.Trim(head, 0, a.layout.margin, 0, a.layout.margin))
+	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
+	height := a.limitsHeight() + a.factsHeight()
+	in.Y = f.BeginScroll("panel", "Speeds", r, &a.view.panel, height)
+	a.drawLimits(f, in)
+	in.Y += a.limitsHeight()
+	a.drawFacts(f, in)
+	f.EndScroll(r, &a.view.panel, t.Panel)
+}
+
+// drawAdvisory draws the line that stands on every screen; where it is too long it says the same shorter.
+func (a *App) drawAdvisory(f *ui.Frame, r scene.Rect) {
+	r = ui.Trim(r, 0, 12, 0, a.layout.margin)
+	text := advisory
+	if scene.Measure(scene.Small, text) > r.W {
+		text = advisoryShort
+	}
+	f.Label(scene.Small, r, scene.Left, text, f.Theme.Muted)
+}
+
+// drawPanelHead draws the title and the switch of the kind of airspeed, for panel and axis together.
+func (a *App) drawPanelHead(f *ui.Frame, r scene.Rect) {
+	kind := a.speedKind()
+	choices := []ui.Choice{}
+	for _, k := range [...]string{"IAS", "CAS", "TAS"} {
+		choices = append(choices, ui.Choice{ID: "speed-kind/" + k, Text: k, Label: speedKindName(k), Selected: k == kind})
+	}
+	w := math.Min(math.Max(ui.SegmentsWidth(choices), 3*54), r.W-8)
+	unit := a.units.Speed.Name
+	uw := scene.Measure(scene.Small, unit)
+	seg, rest := ui.CutRight(r, w)
+	seg.Y, seg.H = r.Y+7, r.H-14
+	ui.Segments(f, seg, choices)
+	if rest.W > uw+10 {
+		f.Label(scene.Small, ui.Trim(rest, 0, 10, 0, 0), scene.Right, unit, f.Theme.Muted)
+		rest.W -= uw + 18
+	}
+	title := "Speeds today"
+	if scene.Measure(scene.BodyBold, title) > rest.W {
+		title = "Speeds"
+	}
+	if scene.Measure(scene.BodyBold, title) <= rest.W {
+		f.Label(scene.BodyBold, rest, scene.Left, title, f.Theme.Ink)
+	}
+}
+
+func speedKindName(k string) string {
+	switch k {
+	case "IAS":
+		return "Indicated airspeed"
+	case "TAS":
+		return "True airspeed"
+	}
+	return "Calibrated airspeed"
+}
+
+// limitsHeight is what the rows of limits take.
+func (a *App) limitsHeight() float64 {
+	return float64((len(a.rows)+a.layout.columns-1)/a.layout.columns) * a.layout.row
+}
+
+// drawLimits draws the rows in one or two columns, the slow half left.
+func (a *App) drawLimits(f *ui.Frame, r scene.Rect) {
+	rows := a.rows
+	columns := a.layout.columns
+	per := (len(rows) + columns - 1) / columns
+	for i := range rows {
+		cell := r
+		if columns > 1 {
+			cell = ui.Cell(r, columns, 1, i/per, 0, columnGap)
+		}
+		cell.Y, cell.H = r.Y+float64(i%per)*a.layout.row, a.layout.row
+		a.drawLimit(f, cell, &rows[i])
+	}
+}
+
+// drawLimit draws one row: name, second figure, symbol, value.
+func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
+	t := f.Theme
+	selected := a.view.marked && a.view.selected == row.key
+	id := "limit/" + row.key.String()
+	touch := scene.Rect{X: r.X - 8, Y: r.Y, W: r.W + 16, H: r.H}
+	switch {
+	case selected:
+		f.Scene.FillRect(ui.Trim(touch, 1, 0, 1, 0), 6, t.Chosen)
+	case f.Pressed(id):
+		f.Scene.FillRect(ui.Trim(touch, 1, 0, 1, 0), 6, t.KeyDown)
+	}
+	f.Scene.Line(r.X, r.Y, r.X+r.W, r.Y, 1, t.Line)
+	ink, style := t.Ink, scene.Body
+	switch row.key {
+	case perf.SlowestLevel, perf.FastestLevel:
+		ink, style = t.Good, scene.BodyBold
+	case perf.NeverExceed:
+		ink, style = t.Bad, scene.BodyBold
+	}
+	valueWidth := math.Max(scene.Measure(scene.Figure, "000"), scene.Measure(scene.Figure, row.value))
+	value, words := ui.CutRight(r, valueWidth)
+	base := math.Round(r.Y + 0.44*r.H)
+	words.W -= 8
+	f.Scene.Label(scene.Figure, value.X+value.W, math.Round(r.Y+0.66*r.H), scene.Right, row.value, ink)
+	aside := row.symbol
+	if aside == "" {
+		aside = row.aside
+	} else if row.aside != "" {
+		aside = row.aside
+	}
+	second := row.second
+	if words.W < scene.Measure(scene.Body, row.name) {
+		style = smaller(style)
+	}
+	free := words.W - scene.Measure(style, row.name)
+	if w := scene.Measure(scene.Small, aside); aside != "" && w+14 <= free {
+		x := words.X + words.W
+		if words.W > 190 { // the symbols stand in a column
+			x = math.Max(words.X+math.Min(0.68*words.W, 170)+w/2, words.X+scene.Measure(style, row.name)+14+w)
+			x = math.Min(x, words.X+words.W)
+		}
+		f.Scene.Label(scene.Small, x, base, scene.Right, aside, t.Muted)
+	} else if aside != "" {
+		second = aside + " · " + second
+	}
+	f.Label(style, scene.Rect{X: words.X, Y: base - 14, W: words.W, H: 16}, scene.Left, row.name, ink)
+	for scene.Measure(scene.Small, second) > words.W {
+		cut := strings.LastIndex(second, ", ")
+		if cut < 0 {
+			break
+		}
+		second = second[:cut]
+	}
+	f.Label(scene.Small, scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}, scene.Left, second, t.Muted)
+	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.second,
+		Value: inKind(&a.solved.answer.Limits[row.key], a.speedKind()), Bounds: touch, Hit: touch, Selected: selected})
+}
+
+// smaller is the small style of the same weight.
+func smaller(s scene.Style) scene.Style {
+	if s == scene.BodyBold {
+		return scene.SmallBold
+	}
+	return scene.Small
+}
+
+// factLine is one line under the limits; an empty one parts two sections.
+type factLine struct{ name, aside, value string }
+
+// factLines are the lines under the limits: ceilings, what is possible, the turn.
+func (a *App) factLines() []factLine {
+	ans, u := &a.solved.answer, &a.units
+	lines := a.facted[:0]
+	ceiling := func(name string, c *perf.Ceiling) {
+		if c.Applies {
+			lines = append(lines, factLine{name, "density altitude", u.AltitudeCoarse(c.DensityAltitude).String()})
+		} else {
+			lines = append(lines, factLine{name, "", "none"})
+		}
+	}
+	ceiling("Service ceiling", &ans.Service)
+	ceiling("Absolute ceiling", &ans.Absolute)
+	allowance := func(name string, w *perf.Allowance) {
+		value := ""
+		if w.MassApplies {
+			value = u.MassWhole(w.Mass).String()
+		}
+		if w.AltitudeApplies {
+			if value != "" {
+				value += " / "
+			}
+			value += u.AltitudeCoarse(w.DensityAltitude).String()
+		}
+		if value != "" {
+			lines = append(lines, factLine{name, "", value})
+		}
+	}
+	allowance("Level up to", &ans.Level)
+	if g := a.solved.cond.ClimbGradient; g > 0 {
+		allowance(u.Gradient(g).String()+" up to", &ans.Climb)
+	}
+	if ans.Turn.Applies {
+		lines = append(lines, factLine{"Turn", "sustained", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
+	}
+	a.facted = lines
+	return lines
+}
+
+func (a *App) factsHeight() float64 {
+	n := len(a.factLines())
+	return panelSection*2 + panelLine*float64((n+a.layout.columns-1)/a.layout.columns)
+}
+
+// drawFacts draws ceilings, allowances and turn.
+func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
+	t := f.Theme
+	lines := a.factLines()
+	per := (len(lines) + a.layout.columns - 1) / a.layout.columns
+	for i := range lines {
+		l, c := &lines[i], r
+		if a.layout.columns > 1 {
+			c = ui.Cell(r, a.layout.columns, 1, i/per, 0, columnGap)
+		}
+		if i%per == 0 {
+			f.Scene.Line(c.X, r.Y, c.X+c.W, r.Y, 1, t.Line)
+		}
+		row := scene.Rect{X: c.X, Y: r.Y + panelSection + float64(i%per)*panelLine, W: c.W, H: panelLine}
+		style := scene.Title
+		if scene.Measure(style, l.value)+scene.Measure(scene.Body, l.name)+12 > c.W {
+			style = scene.BodyBold
+		}
+		w := scene.Measure(style, l.value)
+		f.Label(style, row, scene.Right, l.value, t.Ink)
+		row.W -= w + 10
+		name := scene.Body
+		if scene.Measure(name, l.name) > row.W {
+			name = scene.Small
+		}
+		f.Label(name, row, scene.Left, l.name, t.Ink)
+		row.X += scene.Measure(name, l.name) + 10
+		row.W -= scene.Measure(name, l.name) + 10
+		if scene.Measure(scene.Small, l.aside) <= row.W {
+			f.Scene.Label(scene.Small, row.X, ui.Baseline(scene.Body, row), scene.Left, l.aside, t.Muted)
+		}
+	}
+}

@@ -1,0 +1,117 @@
+package app
+
+import (
+	"testing"
+	"time"
+
+	"levelspan/game/scene"
+	"levelspan/game/ui"
+)
+
+// testHost is the outside of a test: it remembers what was asked of it.
+type testHost struct {
+	copied  []string
+	saved   map[string][]byte
+	opening int
+}
+
+func (h *testHost) Copy(what, text string) { h.copied = append(h.copied, text) }
+func (h *testHost) OpenFile()              { h.opening++ }
+func (h *testHost) SaveFile(name, mime string, data []byte) {
+	if h.saved == nil {
+		h.saved = map[string][]byte{}
+	}
+	h.saved[name] = data
+}
+func (h *testHost) LinkBase() string { return "https://example.org/levelspan.html" }
+func (h *testHost) Version() string  { return "test" }
+
+// pilot is a person at the program: it feeds frames of input, one event a frame, at 60 frames a second.
+type pilot struct {
+	t    *testing.T
+	app  *App
+	host *testHost
+	in   Input
+}
+
+const frame = 16 * time.Millisecond
+
+func newPilot(t *testing.T, w, h float64) *pilot {
+	t.Helper()
+	host := &testHost{}
+	p := &pilot{t: t, host: host, app: New(host, nil), in: Input{Width: w, Height: h, Scale: 1}}
+	if !p.step() {
+		t.Fatal("the first Step drew nothing")
+	}
+	return p
+}
+
+// step feeds a frame without events and reports what Step did.
+func (p *pilot) step(opened ...Opened) bool {
+	p.in.Now += frame
+	in := p.in
+	in.Opened = opened
+	return p.app.Step(in)
+}
+
+// event feeds frames of one event each.
+func (p *pilot) event(events ...ui.Event) {
+	for _, e := range events {
+		p.in.Now += frame
+		e.Time = p.in.Now
+		in := p.in
+		in.Events = []ui.Event{e}
+		p.app.Step(in)
+	}
+}
+
+func (p *pilot) find(id string) *ui.Control {
+	for i := range p.app.Controls() {
+		if c := &p.app.Controls()[i]; c.ID == id {
+			return c
+		}
+	}
+	return nil
+}
+
+// control is the control of that ID; the test ends where there is none.
+func (p *pilot) control(id string) ui.Control {
+	p.t.Helper()
+	c := p.find(id)
+	if c == nil {
+		p.t.Fatalf("no control %q", id)
+	}
+	return *c
+}
+
+func middle(r scene.Rect) (x, y float64) { return r.X + r.W/2, r.Y + r.H/2 }
+
+// tapAt presses and releases a finger.
+func (p *pilot) tapAt(x, y float64) {
+	p.event(ui.Event{Kind: ui.PointerDown, Pointer: 1, Touch: true, X: x, Y: y}, ui.Event{Kind: ui.PointerUp, Pointer: 1, Touch: true, X: x, Y: y})
+}
+
+// tap taps the middle of what can be touched of a control, long after any other tap.
+func (p *pilot) tap(id string) {
+	p.t.Helper()
+	c := p.control(id)
+	if c.Hit.H <= 1 || c.Hit.W <= 1 { // scrolled out of sight
+		p.event(ui.Event{Kind: ui.Activate, ID: id})
+		return
+	}
+	p.in.Now += time.Second
+	x, y := middle(c.Hit)
+	p.tapAt(x, y)
+}
+
+func (p *pilot) tapIf(id string) {
+	if p.find(id) != nil {
+		p.tap(id)
+	}
+}
+
+func (p *pilot) setSlider(id string, v float64) {
+	p.event(ui.Event{Kind: ui.SetValue, ID: id, Value: v})
+}
+
+func (p *pilot) key(k ui.Key) { p.event(ui.Event{Kind: ui.KeyDown, Key: k}) }

@@ -1,0 +1,251 @@
+package app
+
+import (
+	"math"
+
+	"levelspan/perf"
+	"levelspan/perf/casefile"
+)
+
+// curvePoints is how many points a drawn power curve has.
+const curvePoints = 140
+
+// solved is what the model says of the case on the screen, and the curves that are drawn of it.
+type solved struct {
+	solver   perf.Solver
+	aero     perf.Aeroplane
+	cond     perf.Condition
+	answer   perf.Answer
+	revision uint64 // of the document that answer belongs to; 0: none yet
+	count    int    // solves of today's condition since the start; a test reads it
+	fault    string // why the last solve was refused, "" when it was not; answer is then the last good one
+
+	curveRevision uint64
+	curveKind     string
+	curveRange    span
+	speed         [curvePoints]float64 // in the chosen kind, m/s
+	required      [curvePoints]float64 // W
+	available     [curvePoints]float64 // W
+}
+
+// span is a closed range of one quantity.
+type span struct{ lo, hi float64 }
+
+func (s span) width() float64          { return s.hi - s.lo }
+func (s span) clamp(x float64) float64 { return math.Min(math.Max(x, s.lo), s.hi) }
+
+// refresh solves the document when it has changed since the last solve, once.
+func (s *solved) refresh(d *document) {
+	if s.revision == d.revision {
+		return
+	}
+	s.revision = d.revision
+	aero, cond, err := d.current.Model()
+	if err != nil {
+		s.fault = err.Error()
+		return
+	}
+	var answer perf.Answer
+	s.count++
+	if err := s.solver.Solve(&aero, &cond, &answer); err != nil {
+		s.fault = err.Error()
+		return
+	}
+	s.fault = ""
+	s.aero, s.cond, s.answer = aero, cond, answer
+}
+
+// config is the configuration that today is flown in.
+func (s *solved) config() *perf.Configuration { return &s.aero.Configurations[s.cond.Configuration] }
+
+// inKind gives a limit's speed in the chosen kind, m/s.
+func inKind(l *perf.Limit, kind string) float64 {
+	switch kind {
+	case "TAS":
+		return float64(l.TAS)
+	case "IAS":
+		return float64(l.IAS)
+	}
+	return float64(l.CAS)
+}
+
+// kindFromTAS turns a true airspeed into the chosen kind under the solved condition.
+func (s *solved) kindFromTAS(v perf.TAS, kind string) float64 {
+	return speedFromTAS(s.cond.Air, s.config(), v, kind)
+}
+
+// tasFromKind is the inverse of kindFromTAS.
+func (s *solved) tasFromKind(v float64, kind string) perf.TAS {
+	switch kind {
+	case "TAS":
+		return perf.TAS(v)
+	case "IAS":
+		return s.cond.Air.TASFromCAS(s.config().CASFromIAS(perf.IAS(v)))
+	}
+	return s.cond.Air.TASFromCAS(perf.CAS(v))
+}
+
+func speedFromTAS(air perf.Air, config *perf.Configuration, v perf.TAS, kind string) float64 {
+	switch kind {
+	case "TAS":
+		return float64(v)
+	case "IAS":
+		return float64(config.IASFromCAS(air.CASFromTAS(v)))
+	}
+	return float64(air.CASFromTAS(v))
+}
+
+// sampleCurves fills the curves over a range of speeds in the chosen kind. Nothing is done when they are up to date.
+func (s *solved) sampleCurves(kind string, over span) {
+	if s.curveRevision == s.revision && s.curveKind == kind && s.curveRange == over {
+		return
+	}
+	s.curveRevision, s.curveKind, s.curveRange = s.revision, kind, over
+	if err := s.solver.Prepare(&s.aero, &s.cond); err != nil {
+		for i := range s.speed {
+			s.speed[i], s.required[i], s.available[i] = math.NaN(), math.NaN(), math.NaN()
+		}
+		return
+	}
+	for i := range s.speed {
+		v := over.lo + over.width()*float64(i)/(curvePoints-1)
+		tas := s.tasFromKind(v, kind)
+		s.speed[i] = v
+		s.required[i] = s.solver.PowerRequired(tas)
+		s.available[i] = s.solver.PowerAvailable(tas)
+	}
+}
+
+// stallAt is the stall speed in the chosen kind in another bank (rad): at one lift coefficient the speed goes with the root
+// of the load factor.
+func (s *solved) stallAt(bank float64, kind string) (speed float64, ok bool) {
+	l := &s.answer.Limits[perf.Stall]
+	if !l.Applies {
+		return 0, false
+	}
+	tas := float64(l.TAS) * math.Sqrt(math.Cos(s.cond.Bank)/math.Cos(bank))
+	return s.kindFromTAS(perf.TAS(tas), kind), true
+}
+
+// ranges are what the axes and rails span. They depend on the aeroplane, on the chosen kind of speed, and on values of today
+// that lie outside, never on a drag inside them: so no scale moves under a finger.
+type ranges struct {
+	shape    uint64
+	kind     string
+	config   string
+	speed    span // m/s in the chosen kind
+	power    span // W
+	altitude span // density altitude, m
+	mass     span // kg
+}
+
+// lowestAltitude and leastTopAltitude bound the density-altitude rail, m.
+const (
+	lowestAltitude   = -2000 * perf.Foot
+	leastTopAltitude = 16000 * perf.Foot
+	highestAltitude  = 19000.0
+)
+
+// refresh recomputes the ranges when the aeroplane, the configuration or the kind of speed has changed.
+func (r *ranges) refresh(d *document, kind string, scratch *perf.Solver) {
+	c := d.current
+	if r.shape == d.shape && r.kind == kind && r.config == c.Today.Configuration {
+		return
+	}
+	aero, cond, err := c.Model()
+	if err != nil {
+		return
+	}
+	r.shape, r.kind, r.config = d.shape, kind, c.Today.Configuration
+	r.mass = massRange(c)
+	cond.Bank, cond.PowerFraction, cond.Headwind, cond.ClimbGradient = 0, 1, 0, 0
+	r.altitude = altitudeRange(&aero, cond, scratch, c)
+	r.speed, r.power = curveRanges(&aero, cond, scratch, kind, r.altitude)
+}
+
+func massRange(c *casefile.Case) span {
+	empty, most := c.Aeroplane.EmptyMassKg, c.Aeroplane.MaximumMassKg
+	room := math.Max(most-empty, 0.05*most)
+	s := span{math.Max(empty-0.04*room, 5), most + 0.12*room}
+	s.lo = math.Min(s.lo, c.Today.MassKg)
+	s.hi = math.Max(s.hi, c.Today.MassKg)
+	return s
+}
+
+func altitudeRange(aero *perf.Aeroplane, cond perf.Condition, scratch *perf.Solver, c *casefile.Case) span {
+	s := span{lowestAltitude, leastTopAltitude}
+	cond.Mass = (aero.EmptyMass + 2*aero.MaximumMass) / 3
+	if air, err := perf.AirAtDensityAltitude(0); err == nil {
+		cond.Air = air
+		var answer perf.Answer
+		if scratch.Solve(aero, &cond, &answer) == nil && answer.Absolute.Applies {
+			s.hi = math.Max(s.hi, answer.Absolute.DensityAltitude*1.06)
+		}
+	}
+	if air, err := airOf(c); err == nil {
+		s.lo = math.Min(s.lo, air.DensityAltitude)
+		s.hi = math.Max(s.hi, air.DensityAltitude)
+	}
+	s.hi = math.Min(math.Ceil(s.hi/(1000*perf.Foot)-1e-6)*1000*perf.Foot, highestAltitude)
+	s.lo = math.Floor(s.lo/(1000*perf.Foot)+1e-6) * 1000 * perf.Foot
+	return s
+}
+
+// curveRanges looks at the aeroplane light and heavy, low and high, and spans what is worth seeing of it.
+func curveRanges(aero *perf.Aeroplane, cond perf.Condition, scratch *perf.Solver, kind string, altitude span) (speed, power span) {
+	slow, fast, most := math.Inf(1), 0.0, 0.0
+	config := &aero.Configurations[cond.Configuration]
+	var answer perf.Answer
+	for _, height := range [...]float64{0, 0.6 * altitude.hi} {
+		air, err := perf.AirAtDensityAltitude(height)
+		if err != nil {
+			continue
+		}
+		cond.Air = air
+		for _, mass := range [...]float64{aero.EmptyMass, aero.MaximumMass} {
+			cond.Mass = mass
+			if scratch.Solve(aero, &cond, &answer) != nil {
+				continue
+			}
+			stall := &answer.Limits[perf.Stall]
+			if !stall.Applies {
+				continue
+			}
+			slow = math.Min(slow, inKind(stall, kind))
+			top := speedFromTAS(air, config, 2.6*stall.TAS, kind)
+			if l := &answer.Limits[perf.FastestLevel]; l.Applies {
+				top = inKind(l, kind) * 1.12
+				most = math.Max(most, scratchPower(scratch, aero, &cond, l.TAS))
+			}
+			if l := &answer.Limits[perf.NeverExceed]; l.Applies {
+				top = math.Max(top, math.Min(inKind(l, kind)*1.03, top*1.25))
+			}
+			fast = math.Max(fast, top)
+			if scratch.Prepare(aero, &cond) == nil {
+				for i := 0; i < 12; i++ {
+					v := perf.TAS(float64(stall.TAS) * (1 + 0.15*float64(i)))
+					if p := scratch.PowerAvailable(v); p > most && !math.IsInf(p, 0) {
+						most = p
+					}
+				}
+				if p := scratch.PowerRequired(1.15 * stall.TAS); 1.2*p > most && !math.IsInf(p, 0) {
+					most = 1.2 * p
+				}
+			}
+		}
+	}
+	if math.IsInf(slow, 1) || fast <= slow {
+		slow, fast = 20, 70
+	}
+	if most <= 0 {
+		most = 1.1 * aero.Engine.RatedPower
+	}
+	return span{0.72 * slow, fast}, span{0, most * 1.08}
+}
+
+func scratchPower(s *perf.Solver, aero *perf.Aeroplane, cond *perf.Condition, v perf.TAS) float64 {
+	if s.Prepare(aero, cond) != nil {
+		return 0
+	}
+	return s.PowerAvailable(v)
+}

@@ -1,0 +1,73 @@
+package app
+
+import (
+	"math"
+	"strings"
+
+	"levelspan/game/scene"
+	"levelspan/game/ui"
+	"levelspan/perf"
+)
+
+// cautions are the warnings that hold now, the gravest first. What is always so (advisory only, what is not modelled)
+// stands on the panel and behind the menu instead.
+func (a *App) cautions() []string {
+	texts := a.mirror.Warnings[:0]
+	if a.solved.fault != "" {
+		texts = append(texts, "These figures are stale: "+a.solved.fault)
+	}
+	for i, on := range a.solved.answer.Cautions {
+		c := perf.Caution(i)
+		if !on || c == perf.CautionAdvisory || c == perf.CautionNotModelled {
+			continue
+		}
+		texts = append(texts, c.Text())
+	}
+	return texts
+}
+
+// drawStrip draws the cautions under the chart; without any, the day in one sentence.
+func (a *App) drawStrip(f *ui.Frame) {
+	t, r := f.Theme, a.layout.strip
+	texts := a.mirror.Warnings
+	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
+	if len(texts) == 0 {
+		f.Scene.FillRect(r, 0, t.Bar)
+		h := f.ParagraphHeight(scene.Body, in.W, a.mirror.Summary)
+		if h > r.H-8 {
+			h = f.ParagraphHeight(scene.Small, in.W, a.mirror.Summary)
+			f.Paragraph(scene.Small, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, a.mirror.Summary, t.Ink)
+			return
+		}
+		f.Paragraph(scene.Body, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, a.mirror.Summary, t.Ink)
+		return
+	}
+	f.Scene.FillRect(r, 0, t.CautionBack)
+	f.Scene.FillRect(scene.Rect{X: r.X, Y: r.Y, W: 4, H: r.H}, 0, t.Caution)
+	sign, words := ui.CutLeft(in, 40)
+	f.Icon(ui.IconWarning, sign, 24, t.Caution)
+	text := strings.Join(texts, " ")
+	style, more := scene.Body, false
+	if f.ParagraphHeight(style, words.W, text) > r.H-8 {
+		style = scene.Small
+	}
+	h := f.ParagraphHeight(style, words.W, text)
+	if more = h > r.H-6; more {
+		words.W -= 40
+		line := scene.LineHeight(style)
+		h = math.Max(1, math.Floor((r.H-6)/line)) * line
+	}
+	second := 0.0
+	if s := scene.LineHeight(scene.Small) + 2; !more && h+s <= r.H-10 && scene.Measure(scene.Small, a.mirror.Summary) <= words.W {
+		second = s
+	}
+	y := r.Y + (r.H-h-second)/2
+	f.Paragraph(style, scene.Rect{X: words.X, Y: y, W: words.W, H: h}, text, t.Ink)
+	if second > 0 {
+		f.Label(scene.Small, scene.Rect{X: words.X, Y: y + h + 2, W: words.W, H: second}, scene.Left, a.mirror.Summary, t.Muted)
+	}
+	if more {
+		f.Icon(ui.IconRight, scene.Rect{X: words.X + words.W + 4, Y: r.Y, W: 36, H: r.H}, 20, t.Caution)
+	}
+	f.Add(ui.Control{ID: "cautions", Role: ui.RoleButton, Label: "Cautions", ValueText: text, Bounds: r, Hit: r})
+}
