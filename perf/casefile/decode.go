@@ -24,7 +24,6 @@ func Parse(data []byte) (*Case, []Warning, error) {
 			f(c)
 		}
 		c.check(&d.faults, true)
-		c.checkModel(&d.faults)
 	}
 	if err := d.faults.orNil(); err != nil {
 		return nil, d.warnings, err

@@ -29,11 +29,20 @@ func (f Faults) Error() string {
 	for i := range f {
 		lines[i] = f[i].Error()
 	}
+	if len(f) >= maxFaults {
+		lines = append(lines, "further faults are not listed")
+	}
 	return strings.Join(lines, "\n")
 }
 
+// maxFaults is how many are listed; it keeps a hostile file cheap.
+const maxFaults = 1000
+
 // add records a fault; repeated ones of the same path and reason are kept once.
 func (f *Faults) add(path, value, allowed string) {
+	if len(*f) >= maxFaults {
+		return
+	}
 	for i := range *f {
 		if (*f)[i].Path == path && (*f)[i].Allowed == allowed {
 			return

@@ -14,8 +14,6 @@ func (c *Case) Model() (perf.Aeroplane, perf.Condition, error) {
 	return c.model()
 }
 
-func (c *Case) checkModel(faults *Faults) {}
-
 func (c *Case) model() (perf.Aeroplane, perf.Condition, error) {
 	a, t := &c.Aeroplane, &c.Today
 	m := perf.Aeroplane{

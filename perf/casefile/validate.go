@@ -113,6 +113,9 @@ func (c *Case) check(faults *Faults, withRuns bool) {
 			c.checkRun(i, faults)
 		}
 	}
+	if len(*faults) == 0 {
+		c.checkModel(faults)
+	}
 }
 
 func (p *Propeller) check(faults *Faults) {
