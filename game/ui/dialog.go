@@ -47,7 +47,7 @@ func (d *Dialog) Draw(f *Frame, all, area scene.Rect) {
 	foot, body := CutBottom(body, buttons)
 	d.buttons(f, foot)
 	view := Trim(body, 12, 0, 20, 0)
-	y := f.BeginScroll(d.ID+"/text", d.Title, view, &d.Scroll, text)
+	y := f.BeginScroll(d.ID+"/text", d.Title, d.Text, view, &d.Scroll, text)
 	f.Paragraph(scene.Body, scene.Rect{X: view.X, Y: y, W: view.W - 8, H: text + 1}, d.Text, t.Ink)
 	f.EndScroll(view, &d.Scroll, t.Panel)
 }

@@ -11,7 +11,7 @@ const (
 	PointerMove
 	PointerUp
 	PointerCancel
-	Wheel    // DX, DY in logical pixels; Ctrl means zoom and is ignored
+	Wheel    // DX, DY in logical pixels, positive towards the end of the content; Ctrl means zoom and is ignored
 	KeyDown  // Key or Rune; ID is the focused control where the outside keeps the focus (the page), else ""
 	FocusOn  // the outside moved the focus to control ID ("" none)
 	Activate // the outside activated control ID (a click on its mirror element)
@@ -19,7 +19,8 @@ const (
 	SetText  // the outside changed free text of field ID to Text
 )
 
-// Key is a key that has a meaning here; printable ones come as Rune.
+// Key is a key that has a meaning here; printable ones come as Rune. The space bar has both, in one event: KeySpace
+// with the Rune ' '.
 type Key uint8
 
 // The keys.

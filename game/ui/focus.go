@@ -233,7 +233,7 @@ func stop(controls []Control, c *Control, top int) bool {
 	if c.Role != RoleTab && c.Role != RoleRadio || c.Selected {
 		return true
 	}
-	first := true
+	var first *Control
 	for i := range controls {
 		o := &controls[i]
 		if !focusable(o, top) || !grouped(o, c) {
@@ -242,12 +242,11 @@ func stop(controls []Control, c *Control, top int) bool {
 		if o.Selected {
 			return false
 		}
-		if o.ID == c.ID {
-			return first
+		if first == nil {
+			first = o
 		}
-		first = false
 	}
-	return first
+	return first == c
 }
 
 // neighbour is the next member of a control's group the way an arrow points, nil if the key says nothing.

@@ -58,20 +58,8 @@ const (
 	helpWidth   = MinTarget
 )
 
-// Reveal scrolls a field into sight when the form is drawn next.
+// Reveal scrolls a field into sight when the form is drawn next, as when the focus came to it.
 func (fm *Form) Reveal(id string) { fm.reveal = id }
-
-// Has reports whether the form, as last drawn, has a field with that ID.
-func (fm *Form) Has(id string, sections []FormSection) bool {
-	for i := range sections {
-		for j := range sections[i].Fields {
-			if sections[i].Fields[j].ID == id && id != "" {
-				return true
-			}
-		}
-	}
-	return false
-}
 
 // Draw draws the form over r and adds its controls; id names the region that scrolls.
 func (fm *Form) Draw(f *Frame, r scene.Rect, id, label string, sections []FormSection) {
@@ -85,7 +73,7 @@ func (fm *Form) Draw(f *Frame, r scene.Rect, id, label string, sections []FormSe
 		}
 		fm.reveal = ""
 	}
-	top := f.BeginScroll(id, label, r, &fm.Scroll, height)
+	top := f.BeginScroll(id, label, "", r, &fm.Scroll, height)
 	for _, p := range fm.places {
 		b := p.r
 		b.X, b.Y = b.X+r.X, b.Y+top

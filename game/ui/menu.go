@@ -42,7 +42,7 @@ func (m *Menu) Draw(f *Frame, all, area, anchor scene.Rect, groups []MenuGroup) 
 	r.Y = math.Max(area.Y+8, math.Min(area.Y+area.H-8-h, r.Y))
 	f.Box(r, 12, t.Panel, t.Edge)
 	view := Inset(r, 2)
-	y := f.BeginScroll(m.ID, m.Label, view, &m.Scroll, content-4) + pad
+	y := f.BeginScroll(m.ID, m.Label, "", view, &m.Scroll, content-4) + pad
 	for i := range groups {
 		gh := groups[i].height(f, w-2*pad-16)
 		groups[i].draw(f, scene.Rect{X: r.X + pad, Y: y, W: w - 2*pad, H: gh})

@@ -42,10 +42,10 @@ func (s *Scroller) Reveal(lo, hi float64) {
 }
 
 // BeginScroll starts a region of a screen that scrolls up and down; what is drawn until EndScroll is confined to view.
-// The content is drawn from the returned y on.
-func (f *Frame) BeginScroll(id, label string, view scene.Rect, s *Scroller, content float64) (top float64) {
+// The content is drawn from the returned y on. Text is what it says, where no control in it does; else "".
+func (f *Frame) BeginScroll(id, label, text string, view scene.Rect, s *Scroller, content float64) (top float64) {
 	s.Fit(content, view.H)
-	f.Add(Control{ID: id, Role: RoleRegion, Label: label, Bounds: view, Hit: view, Drag: AxisY, Scrolls: true})
+	f.Add(Control{ID: id, Role: RoleRegion, Label: label, ValueText: text, Bounds: view, Hit: view, Drag: AxisY, Scrolls: true})
 	f.PushView(view)
 	return math.Round(view.Y - s.Y)
 }

@@ -120,9 +120,6 @@ func (e *TextEdit) press(a Action) TextResult {
 		e.Caret = len(e.Text)
 	case KeyNone, KeySpace:
 		r := a.Rune
-		if a.Key == KeySpace {
-			r = ' '
-		}
 		if r == 0 || !printable(r) || utf8.RuneCountInString(e.Text) >= e.most() {
 			return TextSame
 		}
