@@ -31,6 +31,7 @@ type mirror struct {
 type element struct {
 	control ui.Control
 	covered bool // under a modal layer
+	stop    bool // Tab halts here
 	tag     string
 	group   string
 }
@@ -106,7 +107,7 @@ func (m *mirror) controls(controls []ui.Control) {
 		}
 		m.seen[c.ID] = true
 		m.keys = append(m.keys, c.ID)
-		m.control(c, c.Modal < top)
+		m.control(c, c.Modal < top, stop(controls, i))
 	}
 	for id := range m.have {
 		if !m.seen[id] {
@@ -148,20 +149,47 @@ func (m *mirror) grouped() []string {
 	return list
 }
 
-// groupOf is "kind name" for what has to stand in a group; the name is the part of the ID before the slash.
+// groupNames makes a group's name readable.
+var groupNames = strings.NewReplacer("-", " ", "/", " ", ".", " ", "_", " ")
+
+// groupOf is "kind name" for what has to stand in a group. A group is one role and one ID up to its last slash.
 func groupOf(c *ui.Control) string {
-	stem, _, _ := strings.Cut(c.ID, "/")
-	stem = strings.ReplaceAll(stem, "-", " ")
+	kind := ""
 	switch c.Role {
 	case ui.RoleTab:
-		return "tablist " + stem
+		kind = "tablist "
 	case ui.RoleRadio:
-		if i := strings.LastIndexByte(c.ID, '/'); i > 0 {
-			stem = strings.NewReplacer("-", " ", "/", " ", ".", " ", "_", " ").Replace(c.ID[:i])
-		}
-		return "radiogroup " + stem
+		kind = "radiogroup "
+	default:
+		return ""
 	}
-	return ""
+	return kind + groupNames.Replace(c.ID[:max(0, strings.LastIndexByte(c.ID, '/'))])
+}
+
+// stop reports whether Tab halts at a control: in a group only at the selected member, or the first if none is. The
+// arrow keys go on from there.
+func stop(controls []ui.Control, at int) bool {
+	c := &controls[at]
+	if c.Disabled {
+		return false
+	}
+	if c.Role != ui.RoleTab && c.Role != ui.RoleRadio || c.Selected {
+		return true
+	}
+	group, first := groupOf(c), true
+	for i := range controls {
+		o := &controls[i]
+		if o.Role != c.Role || o.Modal != c.Modal || o.Disabled || groupOf(o) != group {
+			continue
+		}
+		if o.Selected {
+			return false
+		}
+		if i < at {
+			first = false
+		}
+	}
+	return first
 }
 
 func tagOf(c *ui.Control) string {
@@ -177,8 +205,8 @@ func tagOf(c *ui.Control) string {
 }
 
 // control brings one element in line.
-func (m *mirror) control(c *ui.Control, covered bool) {
-	now := element{control: *c, covered: covered, tag: tagOf(c), group: groupOf(c)}
+func (m *mirror) control(c *ui.Control, covered, stop bool) {
+	now := element{control: *c, covered: covered, stop: stop, tag: tagOf(c), group: groupOf(c)}
 	was, there := m.have[c.ID]
 	if there && was == now {
 		return
@@ -216,7 +244,7 @@ func (m *mirror) control(c *ui.Control, covered bool) {
 type attribute struct{ name, value string }
 
 // attributes are all that an element may carry, always in the same order; "" means that it is not there.
-func attributes(e *element) [13]attribute {
+func attributes(e *element) [14]attribute {
 	c := &e.control
 	yes := func(b bool) string {
 		if b {
@@ -264,7 +292,14 @@ func attributes(e *element) [13]attribute {
 	if e.tag == "input" {
 		invalid = yes(c.Error != "")
 	}
-	return [13]attribute{
+	tabindex := "-1"
+	switch {
+	case e.tag == "region":
+		tabindex = ""
+	case e.stop:
+		tabindex = "0"
+	}
+	return [14]attribute{
 		{"role", roleOr(role, e.tag)},
 		{"aria-label", name},
 		{"aria-valuenow", now},
@@ -278,6 +313,7 @@ func attributes(e *element) [13]attribute {
 		{"aria-disabled", yes(c.Disabled)},
 		{"inert", covered},
 		{"aria-invalid", invalid},
+		{"tabindex", tabindex},
 	}
 }
 

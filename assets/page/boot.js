@@ -44,6 +44,12 @@
     return;
   }
 
+  // Device pixels a logical pixel, as the drawing library reads them, once: no more than the glyphs are made for, and no
+  // larger a picture than a tablet's memory bears.
+  const real = window.devicePixelRatio || 1, longest = Math.max(screen.width, screen.height, innerWidth, innerHeight);
+  const ratio = Math.min(real, 3, Math.max(longest * 2 > 4096 ? 1 : 2, 2600 / longest));
+  if (ratio !== real) Object.defineProperty(window, 'devicePixelRatio', {configurable: true, get: () => ratio});
+
   // The program's bytes: inside this page, or beside it.
   const inline = byId('levelspan-program');
   const inflate = async (packed, size) => {

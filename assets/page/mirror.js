@@ -27,7 +27,6 @@
       el.addEventListener('input', () => L.push(L.TEXT, {id, text: el.value}));
     }
     if (tag === 'region') el.dataset.region = '';
-    else el.tabIndex = 0;
     controls.set(id, el);
     return el;
   };

@@ -9,18 +9,26 @@ import (
 	"sort"
 )
 
-// build writes OUT/levelspan.html and OUT/site and prints their sizes.
-func build(ctx context.Context, dir, wasmFile, version string, out io.Writer) error {
+// options are what a build is asked for.
+type options struct {
+	dir     string
+	wasm    string // a program already compiled, or ""
+	version string // or "" to describe it
+	brotli  bool
+}
+
+// build writes levelspan.html and site into the directory and prints their sizes.
+func build(ctx context.Context, o options, out io.Writer) error {
 	var err error
-	p := parts{Version: version}
+	p := parts{Version: o.version}
 	if p.Version == "" {
 		p.Version = describe(ctx)
 	}
 	if p.WasmExec, err = wasmExec(ctx); err != nil {
 		return err
 	}
-	if wasmFile != "" {
-		p.Wasm, err = os.ReadFile(wasmFile)
+	if o.wasm != "" {
+		p.Wasm, err = os.ReadFile(o.wasm)
 	} else {
 		p.Wasm, err = compile(ctx)
 	}
@@ -35,17 +43,17 @@ func build(ctx context.Context, dir, wasmFile, version string, out io.Writer) er
 	if err != nil {
 		return err
 	}
-	siteDir := filepath.Join(dir, "site")
+	siteDir := filepath.Join(o.dir, "site")
 	if err := os.RemoveAll(siteDir); err != nil {
 		return err
 	}
 	if err := os.MkdirAll(siteDir, 0o755); err != nil {
 		return err
 	}
-	if err := os.WriteFile(filepath.Join(dir, "levelspan.html"), []byte(single), 0o644); err != nil {
+	if err := os.WriteFile(filepath.Join(o.dir, "levelspan.html"), []byte(single), 0o644); err != nil {
 		return err
 	}
-	plain, zipped, brotlied, err := writeSite(ctx, siteDir, site)
+	plain, zipped, brotlied, err := writeSite(ctx, siteDir, site, o.brotli)
 	if err != nil {
 		return err
 	}
@@ -59,14 +67,13 @@ func build(ctx context.Context, dir, wasmFile, version string, out io.Writer) er
 }
 
 // writeSite writes the files, each beside its compressed forms, and gives the sum of each form. The sum for brotli
-// is 0 where there is no brotli command.
-func writeSite(ctx context.Context, dir string, files map[string][]byte) (plain, zipped, brotlied int, err error) {
+// is 0 where it is not wanted or there is no such command.
+func writeSite(ctx context.Context, dir string, files map[string][]byte, withBrotli bool) (plain, zipped, brotlied int, err error) {
 	names := make([]string, 0, len(files))
 	for n := range files {
 		names = append(names, n)
 	}
 	sort.Strings(names)
-	withBrotli := true
 	for _, n := range names {
 		data := files[n]
 		gz, err := pack(data)
@@ -74,11 +81,13 @@ func writeSite(ctx context.Context, dir string, files map[string][]byte) (plain,
 			return 0, 0, 0, err
 		}
 		write := map[string][]byte{n: data, n + ".gz": gz}
-		if br, ok := brotli(ctx, data); ok {
-			write[n+".br"] = br
-			brotlied += len(br)
-		} else {
-			withBrotli = false
+		if withBrotli {
+			br, ok := brotli(ctx, data)
+			if ok {
+				write[n+".br"] = br
+				brotlied += len(br)
+			}
+			withBrotli = ok
 		}
 		for name, content := range write {
 			if err := os.WriteFile(filepath.Join(dir, name), content, 0o644); err != nil {
