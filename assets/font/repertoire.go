@@ -68,10 +68,22 @@ func Count() int {
 
 // Index is the place of a character in the repertoire, 1..Count()-1, or Missing.
 func Index(r rune) int {
-	if r >= 0x20 && r <= 0x7E {
-		return Missing + 1 + int(r-0x20)
+	if uint32(r) < uint32(len(latin)) {
+		return int(latin[r])
 	}
-	lo, hi := 1, len(spans)
+	return search(r)
+}
+
+// latin is Index for the characters that most text is made of.
+var latin = func() (t [256]uint16) {
+	for r := range t {
+		t[r] = uint16(search(rune(r)))
+	}
+	return t
+}()
+
+func search(r rune) int {
+	lo, hi := 0, len(spans)
 	for lo < hi {
 		mid := int(uint(lo+hi) >> 1)
 		if spans[mid].hi < r {

@@ -22,6 +22,7 @@ type Frame struct {
 	Bounds image.Rectangle // the picture
 	Clip   image.Rectangle // the innermost clip, within Bounds
 
+	exact bool
 	clips []image.Rectangle
 	pts   []scene.Point
 	dash  []scene.Point
@@ -36,7 +37,12 @@ func (f *Frame) Begin(s *scene.Scene) {
 	f.Bounds = image.Rect(0, 0, w, h)
 	f.Clip = f.Bounds
 	f.clips = f.clips[:0]
+	f.exact = false
 }
+
+// Exact makes the pass one in logical pixels, with strokes neither put on whole pixels nor cut into dashes: for back
+// ends that have no pixels.
+func (f *Frame) Exact() { f.Scale, f.exact = 1, true }
 
 // Push enters a clip and Pop leaves it. A Pop too many has no effect.
 func (f *Frame) Push(r scene.Rect) {

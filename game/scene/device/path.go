@@ -97,14 +97,16 @@ func (f *Frame) Stroke(s *scene.Scene, op *scene.Op) (parts []Part, width float6
 	}
 	width = min(width, MaxWidth)
 	f.pts, f.parts = f.pts[:0], f.parts[:0]
-	if square(p, op.Closed) {
+	dash, gap := op.Dash*f.Scale, op.Gap*f.Scale
+	if !f.exact && square(p, op.Closed) {
 		width = max(1, math.Round(width))
+		dash, gap = math.Round(dash), math.Round(gap)
 		f.snapped(p, width, op.Closed)
 	} else {
 		f.free(p, op.Closed)
 	}
-	if op.Dash > 0 && op.Gap > 0 {
-		f.dashed(op.Dash*f.Scale, op.Gap*f.Scale)
+	if !f.exact && op.Dash > 0 && op.Gap > 0 {
+		f.dashed(max(dash, 1), max(gap, 1))
 	}
 	for i := range f.parts {
 		q := &f.parts[i]
@@ -158,9 +160,9 @@ func centre(v, width float64) float64 { return math.Round(v-width/2) + width/2 }
 // end closes the part that began at p0, unless it is no line.
 func (f *Frame) end(p0 int, closed bool) {
 	n := len(f.pts)
-	if closed && n-p0 > 2 && same(f.pts[p0], f.pts[n-1]) {
-		f.pts = f.pts[:n-1]
+	for closed && n-p0 > 1 && same(f.pts[p0], f.pts[n-1]) {
 		n--
+		f.pts = f.pts[:n]
 	}
 	if n-p0 < 2 {
 		f.pts = f.pts[:p0]
@@ -241,9 +243,8 @@ func cut(a, b *scene.Point) bool {
 	return true
 }
 
-// dashed replaces the parts by their dashes, each part starting with one.
+// dashed replaces the parts by their dashes, each part starting with one. dash and gap are at least 1.
 func (f *Frame) dashed(dash, gap float64) {
-	dash, gap = max(dash, 1), max(gap, 1)
 	f.dash = append(f.dash[:0], f.pts...)
 	old := len(f.parts)
 	f.pts = f.pts[:0]
@@ -265,7 +266,7 @@ func (f *Frame) dashed(dash, gap float64) {
 				left -= step
 				p := scene.Point{X: a.X + (b.X-a.X)*at/length, Y: a.Y + (b.Y-a.Y)*at/length}
 				if on {
-					f.pts = append(f.pts, p)
+					f.add(p)
 				}
 				if left > tiny {
 					continue

@@ -31,7 +31,11 @@ func Sides(radius float64) int {
 
 // Circle appends the corners of a circle, clockwise on the screen.
 func Circle(dst []scene.Point, c scene.Point, radius float64) []scene.Point {
-	n := Sides(radius)
+	return Corners(dst, c, radius, Sides(radius))
+}
+
+// Corners appends the n corners of a regular polygon.
+func Corners(dst []scene.Point, c scene.Point, radius float64, n int) []scene.Point {
 	for i := range n {
 		dst = append(dst, on(c, radius, i, n))
 	}

@@ -53,7 +53,7 @@ func (c *Chart) grid(s *scene.Scene, r scene.Rect) {
 	for i, t := range speeds {
 		x := r.X + r.W*float64(i)/float64(len(speeds)-1)
 		s.Line(x, r.Y, x, r.Y+r.H, 1, Grid)
-		s.Label(scene.Small, x, r.Y+r.H+20, scene.Center, t, Faint)
+		s.Label(scene.Small, x, r.Y+r.H+76, scene.Center, t, Faint)
 	}
 	for i, t := range powers {
 		y := r.Y + r.H*(1-float64(i)/float64(len(powers)-1))
@@ -145,5 +145,5 @@ func (c *Chart) panel(s *scene.Scene, x0, x1 float64) {
 		s.Label(scene.Figure, x1-48, y+33, scene.Right, r.value, col)
 		s.Label(scene.Small, x1-16, y+33, scene.Right, r.plus, Faint)
 	}
-	s.Label(scene.Small, x0, 590, scene.Left, "Advisory. Handbook, placards and local rules govern.", Faint)
+	s.Label(scene.Small, x0, 590, scene.Left, "Advisory. Handbook and placards govern.", Faint)
 }
