@@ -169,7 +169,7 @@ func TestWorkedExampleSmith(t *testing.T) {
 	near(t, "rate of climb at the least-drag speed", got.Limits[SteepestClimb].Gradient*112.36, 0.55, 0.005)
 
 	published(t, "SMITH-DW") // CD = .018 + .016 CL^2, least power at 60 m/s EAS: D/W at 200 m/s EAS 0.1115
-	const wide = 24.0 // aspect ratio at which e of this k stays inside its domain
+	const wide = 24.0        // aspect ratio at which e of this k stays inside its domain
 	a.Polar = Polar{ParasiteDrag: 0.018, OswaldEfficiency: 1 / (math.Pi * wide * 0.016)}
 	a.WingSpan = math.Sqrt(area * wide)
 	sea := standardDay(t, 0)

@@ -200,22 +200,43 @@ func TestPublishedVapourPressure(t *testing.T) {
 			nearRel(t, c.ID, SaturationVapourPressure(ZeroCelsius+x)/Hectopascal, want.ES[i], 2e-6)
 		}
 	}
-	// Humid density with the same formula (computed rows; CIPM-2007 is 2 to 5 parts in 10 000 above an ideal gas).
-	for _, r := range []struct{ t, p, rh, rho, cipm, da float64 }{
-		{20, 101325, 0.5, 1.198867, 1.199314, 735.1},
-		{25, 101325, 0.8, 1.172748, 1.173137, 1482.1},
-		{30, 101325, 1.0, 1.145996, 1.146353, 2260.5},
-	} {
-		e := r.rh * SaturationVapourPressure(ZeroCelsius+r.t)
-		dew := dewPointOf(e)
-		a, err := AirAt(0, ZeroCelsius+r.t, min(dew, ZeroCelsius+r.t))
+	// Humid density with the same formula. The rows of CIPM-2007 carry the compressibility, which an ideal gas leaves out: 2 to 6
+	// parts in 10 000.
+	for _, c := range published(t, "HUM-CIPM-") {
+		var in struct {
+			T, RH float64
+			TC    float64 `json:"t_C"`
+			P     float64 `json:"p_Pa"`
+		}
+		var want struct {
+			CIPM  float64 `json:"rho_CIPM2007"`
+			Ideal float64 `json:"rho_ideal_CIMO"`
+			DA    float64 `json:"density_alt_humid_ft"`
+		}
+		into(t, c.Inputs, &in)
+		into(t, c.Expected, &want)
+		dew := 0.0
+		if in.RH > 0 {
+			dew = min(dewPointOf(in.RH*SaturationVapourPressure(ZeroCelsius+in.TC)), ZeroCelsius+in.TC)
+		}
+		// Pressure altitude of the row's pressure, in the troposphere of ISO 2533.
+		pa := SeaLevelTemperature / 0.0065 * (1 - math.Pow(in.P/SeaLevelPressure, 287.05287*0.0065/StandardGravity))
+		a, err := AirAt(pa, ZeroCelsius+in.TC, dew)
 		if err != nil {
 			t.Fatal(err)
 		}
-		nearRel(t, "humid density", a.Density, r.rho, 2e-6)
-		nearRel(t, "humid density, CIPM-2007", a.Density, r.cipm, 6e-4)
-		near(t, "humid density altitude, ft", a.DensityAltitude/Foot, r.da, 0.5)
+		nearRel(t, c.ID+" density", a.Density, want.Ideal, 2e-6)
+		nearRel(t, c.ID+" density against CIPM-2007", a.Density, want.CIPM, 6e-4)
+		near(t, c.ID+" density altitude, ft", a.DensityAltitude/Foot, want.DA, 0.5)
 	}
+	// ASHRAE Handbook Fundamentals 2017 ch. 1, eqs 26 and 28 (HUM-RHO-ASHRAE): 30 C, humidity ratio 0.02, 95461 Pa.
+	published(t, "HUM-RHO-ASHRAE")
+	pa := SeaLevelTemperature / 0.0065 * (1 - math.Pow(95461/SeaLevelPressure, 287.05287*0.0065/StandardGravity))
+	a, err := AirAt(pa, 303.15, dewPointOf(0.02*95461/(0.621945+0.02)))
+	if err != nil {
+		t.Fatal(err)
+	}
+	nearRel(t, "HUM-RHO-ASHRAE density", a.Density, 1.08411986348219, 3e-4)
 }
 
 // dewPointOf inverts the WMO formula, K.
@@ -231,16 +252,21 @@ func TestPublishedAirspeeds(t *testing.T) {
 		{120, 9.47}, {130, 11.12}, {140, 12.92}, {150, 14.86}, {160, 16.94}, {180, 21.52}, {200, 26.68}, {250, 42.22}} {
 		near(t, "impact pressure, inH2O", ImpactPressure(CAS(r[0]*Knot))/SeaLevelPressure*407.51, r[1], 0.0055)
 	}
-	// The classic EAS/CAS factors, at 10 000 and 20 000 ft (checks.json FFACTOR-).
-	published(t, "FFACTOR-")
-	for h, row := range map[float64][]float64{
-		10000: {.999, .998, .997, .996, .995, .994, .992, .991, .989},
-		20000: {.997, .995, .993, .990, .987, .984, .981, .977, .973},
-	} {
-		a := standardDay(t, h*Foot)
-		for i, f := range row {
-			v := CAS((100 + 25*float64(i)) * Knot)
-			near(t, "EAS/CAS", float64(a.EASFromTAS(a.TASFromCAS(v)))/float64(v), f, 0.0006)
+	// The classic EAS/CAS factors of the flight-performance textbooks, six heights of nine speeds.
+	for _, c := range published(t, "FFACTOR-") {
+		var in struct {
+			PA  float64   `json:"pressure_alt_ft"`
+			CAS []float64 `json:"cas_kt"`
+		}
+		var want struct {
+			F []float64 `json:"eas_over_cas"`
+		}
+		into(t, c.Inputs, &in)
+		into(t, c.Expected, &want)
+		a := standardDay(t, in.PA*Foot)
+		for i, kt := range in.CAS {
+			v := CAS(kt * Knot)
+			near(t, c.ID+" EAS/CAS", float64(a.EASFromTAS(a.TASFromCAS(v)))/float64(v), want.F[i], 0.0006)
 		}
 	}
 	for _, r := range []struct{ cas, pa, oat, eas, tas float64 }{
