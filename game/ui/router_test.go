@@ -215,20 +215,21 @@ func TestInertia(t *testing.T) {
 		t.Fatal("does not coast")
 	}
 	// The way coasted depends on the time alone, not on the frames.
-	far := func(r Router, step time.Duration) (sum float64) {
-		for now := 60 * ms; now < 5*time.Second && r.Animating(); now += step {
+	far := func(r Router, step, until time.Duration) (sum float64) {
+		for now := 60*ms + step; now <= 60*ms+until; now += step {
 			for _, a := range r.Route(nil, nil, board(), now) {
 				sum += a.DY
 			}
 		}
-		if r.Animating() {
-			t.Error("coasts for ever")
-		}
 		return sum
 	}
-	a, b := far(r, 8*ms), far(r, 33*ms)
-	if a < 200 || a-b > 8 || b-a > 8 {
+	a, b := far(r, 8*ms, 264*ms), far(r, 33*ms, 264*ms)
+	if a < 100 || a-b > 1e-6 || b-a > 1e-6 {
 		t.Errorf("coasted %v and %v", a, b)
+	}
+	on := r
+	if end := far(on, 8*ms, 5*time.Second); end < a+50 || end > 2000 {
+		t.Errorf("coasted to %v", end)
 	}
 	// A touch stops it and is no tap.
 	got = r.Route(nil, []Event{down(2, 50, 230, 100*ms), up(2, 50, 230, 120*ms)}, board(), 120*ms)
