@@ -29,7 +29,7 @@ func (f Figure) String() string {
 	return f.Number + Group + f.Unit
 }
 
-// Number writes x with that many decimals, thousands grouped from 10 000 up.
+// Number writes x with that many decimals, thousands grouped.
 func Number(x float64, decimals int) string {
 	if math.IsNaN(x) || math.IsInf(x, 0) {
 		return None
@@ -41,7 +41,7 @@ func Number(x float64, decimals int) string {
 			whole, rest = s[:i], s[i:]
 		}
 	}
-	if len(whole) > 4 {
+	if len(whole) > 3 {
 		grouped := ""
 		for len(whole) > 3 {
 			grouped = Group + whole[len(whole)-3:] + grouped

@@ -102,13 +102,11 @@ func (r *Report) Shortfall() []string {
 	a, u := &r.Answer, r.Units
 	lines := []string{a.Outcome.Text()}
 	if a.Shortfall > 0 {
-		at := r.speeds(a.ShortfallTAS)
-		lines = append(lines, "Least is missing at "+figure.Figure{Number: figure.Number(u.SpeedOf(&at)/u.Speed.SI, 1), Unit: u.SpeedLabel()}.String()+": "+
-			u.PowerFine(a.Shortfall).String()+" of thrust power.")
+		lines = append(lines, "Least is missing at "+r.chosen(r.speeds(a.ShortfallTAS))+": "+u.PowerFine(a.Shortfall).String()+" of thrust power.")
 	}
 	var ways []string
 	if a.Level.MassApplies {
-		ways = append(ways, "below "+u.MassWhole(a.Level.Mass).String()+" in this air")
+		ways = append(ways, "below "+r.mass(&a.Level)+" in this air")
 	}
 	if a.Level.AltitudeApplies {
 		ways = append(ways, "below "+u.AltitudeFine(a.Level.DensityAltitude).String()+" density altitude at this mass")
@@ -117,6 +115,20 @@ func (r *Report) Shortfall() []string {
 		return append(lines, "Neither a lower mass nor a lower height that the model knows would make it possible.")
 	}
 	return append(lines, "It would be possible "+strings.Join(ways, ", or ")+".")
+}
+
+// chosen is a speed of the chosen kind with its label.
+func (r *Report) chosen(l perf.Limit) string {
+	return figure.Figure{Number: r.Units.SpeedFine(r.Units.SpeedOf(&l)).Number, Unit: r.Units.SpeedLabel()}.String()
+}
+
+// mass is the greatest mass of an allowance in words; one above the maximum mass says so.
+func (r *Report) mass(x *perf.Allowance) string {
+	s := r.Units.MassWhole(x.Mass).String()
+	if x.Mass > r.Aeroplane.MaximumMass {
+		s += " (above the maximum mass, " + r.Units.MassWhole(r.Aeroplane.MaximumMass).String() + ")"
+	}
+	return s
 }
 
 func (r *Report) rows() [][]string {
@@ -133,9 +145,6 @@ func (r *Report) rows() [][]string {
 // Second is the figure that goes with a limit, in words; "" where there is none. Speeds in it are of the chosen kind.
 func (r *Report) Second(k perf.Key) string {
 	l, u := &r.Answer.Limits[k], r.Units
-	speed := func(x perf.Limit) string {
-		return figure.Figure{Number: figure.Number(u.SpeedOf(&x)/u.Speed.SI, 1), Unit: u.SpeedLabel()}.String()
-	}
 	toEmpty := " on " + u.FuelWhole(r.Condition.Fuel).String() + ", to empty tanks, no reserve"
 	if u.Electric {
 		toEmpty = " on " + u.FuelWhole(r.Condition.Fuel).String() + ", to no charge, no reserve"
@@ -143,7 +152,7 @@ func (r *Report) Second(k perf.Key) string {
 	switch k {
 	case perf.Stall:
 		if s, ok := r.StallAtBank(45 * perf.Degree); ok {
-			return "at 45° bank " + speed(s)
+			return "at 45° bank " + r.chosen(s)
 		}
 	case perf.LeastPower:
 		s := u.PowerFine(l.PowerRequired).String() + " of thrust power"
@@ -156,7 +165,7 @@ func (r *Report) Second(k perf.Key) string {
 	case perf.FastestClimb:
 		return u.Rate(l.Rate).String()
 	case perf.BestGlide:
-		return figure.GlideRatio(l.Ratio) + ", sinking " + u.Rate(l.Sink).String() + "; least sink at " + speed(r.speeds(l.LeastSinkTAS))
+		return figure.GlideRatio(l.Ratio) + ", sinking " + u.Rate(l.Sink).String() + "; least sink at " + r.chosen(r.speeds(l.LeastSinkTAS))
 	case perf.BestRange:
 		s := r.Wind()
 		if l.FuelFlow > 0 {
@@ -171,6 +180,9 @@ func (r *Report) Second(k perf.Key) string {
 			return u.FuelFlow(l.FuelFlow).String()
 		}
 	case perf.Manoeuvring:
+		if r.Condition.Mass >= r.Aeroplane.MaximumMass {
+			return "at maximum mass"
+		}
 		return "at " + u.MassWhole(r.Condition.Mass).String()
 	case perf.FastestLevel:
 		return u.PowerFine(l.ShaftPower).String() + " at the shaft"
@@ -193,12 +205,12 @@ func (r *Report) facts() [][]string {
 	ceiling("Absolute ceiling", &a.Absolute)
 	if t := &a.Turn; t.Applies {
 		rows = append(rows, []string{"Tightest level turn", "radius " + u.Metres(t.Radius).String() + ", " + figure.DegreesFine(t.Bank).String() + " bank, " +
-			figure.Number(t.LoadFactor, 2) + " g, " + figure.DegreesFine(t.Rate).String() + "/s, at " + u.SpeedFine(float64(t.TAS)).String() + " TAS"})
+			figure.Number(t.LoadFactor, 2) + " g, " + figure.DegreesFine(t.Rate).String() + "/s, at " + r.chosen(r.speeds(t.TAS))})
 	}
 	allowance := func(name string, x *perf.Allowance) {
 		var parts []string
 		if x.MassApplies {
-			parts = append(parts, u.MassWhole(x.Mass).String()+" in this air")
+			parts = append(parts, r.mass(x)+" in this air")
 		}
 		if x.AltitudeApplies {
 			parts = append(parts, u.AltitudeFine(x.DensityAltitude).String()+" density altitude at this mass")
