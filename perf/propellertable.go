@@ -160,7 +160,7 @@ func leastTwist(c num.Cubic, j, h float64) float64 {
 func (t *propellerTable) advanceOf(tau float64) float64 {
 	n := len(t.j)
 	first := t.ct[0].A
-	if j0 := t.j[0]; first >= tau*j0*j0 && (j0 > 0 && first > 0) {
+	if j0 := t.j[0]; first <= tau*j0*j0 {
 		return math.Sqrt(first / tau)
 	}
 	if je := t.j[n-1]; t.ctEnd >= tau*je*je {

@@ -118,7 +118,7 @@ func (z *Solver) scanTurn(t *turning, p float64, best, v, m *float64, by *SetBy)
 		if fa > 0 && fb <= 0 {
 			t.improve(a, fa, b, fb, best, v, m, by)
 		}
-		if m2*v2*v2 < 1 {
+		if m2*v2*v2 < 1 && v2 > z.vx {
 			return
 		}
 		a, fa = b, fb
