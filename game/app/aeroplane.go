@@ -55,10 +55,11 @@ func (a *App) sectionsOf(dst []ui.FormSection, rows []formRow) []ui.FormSection 
 			}
 			s.Row = append(s.Row, ui.Button{ID: r.path, Text: r.label, Icon: icon, Kind: kind})
 		case rowFact:
-			if s.Note != "" {
-				s.Note += ", "
+			if s.Note == "" {
+				s.Note = r.label + " " + r.value
+			} else {
+				s.Note += ", " + strings.ToLower(r.label[:1]) + r.label[1:] + " " + r.value
 			}
-			s.Note += r.label + " " + r.value
 		default:
 			s.Fields = append(s.Fields, a.fieldOf(r))
 		}
@@ -116,7 +117,7 @@ func (a *App) drawAeroplane(f *ui.Frame) {
 	a.drawAdvisory(f, foot)
 	forms := &a.view.forms
 	if body.W >= bothFormsWidth {
-		today, rest := ui.CutRight(body, clamp(0.34*body.W, 420, 560))
+		today, rest := ui.CutRight(body, clamp(0.3*body.W, 404, 600))
 		forms[formAeroplane].Draw(f, rest, "form/aeroplane", "Aeroplane", forms[formAeroplane].sections)
 		f.Scene.FillRect(scene.Rect{X: today.X, Y: today.Y, W: 1, H: today.H}, 0, t.Line)
 		forms[formToday].Draw(f, ui.Trim(today, 0, 0, 0, 1), "form/today", "Today", forms[formToday].sections)

@@ -11,7 +11,7 @@ import (
 // chart is what the Chart screen keeps between frames.
 type chart struct {
 	altitude, mass                        ui.Rail
-	speedTicks, powerTicks, altitudeTicks ui.Ticks
+	speedTicks, powerTicks, altitudeTicks plainTicks
 	x, y                                  ui.Scale // speed (m/s in the chosen kind) and power (W) to pixels
 	upper, lower                          []scene.Point
 	line                                  []scene.Point
@@ -37,11 +37,14 @@ func (a *App) drawChart(f *ui.Frame) {
 		a.drawClimb(f)
 	} else {
 		a.drawMarked(f)
+	}
+	rail := a.bandRail(f.Theme)
+	rail.Draw(f, a.layout.band)
+	if a.solved.answer.Outcome != perf.LevelFlight {
 		a.drawShortfall(f)
 	}
 	a.drawCurveNames(f)
-	rail := a.bandRail(f.Theme)
-	rail.Draw(f, a.bandArea())
+	a.drawSpeedName(f)
 	a.drawRails(f)
 	a.drawStrip(f)
 	a.drawPanel(f)
@@ -173,16 +176,33 @@ func (a *App) drawClimb(f *ui.Frame) {
 	a.dot(f, v, t.Required)
 	text := a.units.Rate(l.Rate).String()
 	w := scene.Measure(scene.BodyBold, text)
-	at := scene.Rect{X: x + 9, Y: (y0+y1)/2 - 11, W: w, H: 22}
-	for _, r := range [...]scene.Rect{at, {X: at.X, Y: y1 + 0.3*(y0-y1) - 11, W: w, H: 22}, {X: x - 9 - w, Y: at.Y, W: w, H: 22},
-		{X: x - 9 - w, Y: y1 + 0.3*(y0-y1) - 11, W: w, H: 22}, {X: x - w/2, Y: y1 - 32, W: w, H: 22}, {X: x - w/2, Y: y0 + 12, W: w, H: 22}} {
-		if r.X >= p.X+2 && r.X+w <= p.X+p.W-2 && r.Y >= p.Y+2 && r.Y+r.H <= p.Y+p.H-2 && !a.covered(r, &s.required, &s.available) {
-			at = r
-			break
-		}
+	at, free := a.freePlace(x, (y0+y1)/2, w, 22)
+	if !free {
+		f.Scene.FillRect(ui.Inset(at, -3), 4, ui.Fade(t.Background, 0.85))
 	}
 	f.Label(scene.BodyBold, at, scene.Left, text, t.Good)
-	ch.labels = append(ch.labels, at)
+	ch.labels = append(ch.labels, at, scene.Rect{X: x - 1, Y: math.Min(y0, y1), W: 2, H: math.Abs(y1 - y0)})
+}
+
+// freePlace finds room for words of w by h beside a vertical stroke at x, as near to height y as the curves and other words
+// allow; not free: there is none, and the words would cross something.
+func (a *App) freePlace(x, y, w, h float64) (place scene.Rect, free bool) {
+	p, s := a.layout.plot, &a.solved
+	for d := 0.0; d < 80; d += 4 { // to the right first
+		if r := (scene.Rect{X: x + 9, Y: y - h/2 - d, W: w, H: h}); r.X+w <= p.X+p.W-2 && r.Y >= p.Y+2 && !a.covered(r, &s.required, &s.available) {
+			return r, true
+		}
+	}
+	best := scene.Rect{X: clamp(x+9, p.X, p.X+p.W-w), Y: clamp(y-h/2, p.Y, p.Y+p.H-h), W: w, H: h}
+	for d := 0.0; d < p.H; d += 4 {
+		for _, r := range [...]scene.Rect{{X: x + 9, Y: y - h/2 - d}, {X: x - 9 - w, Y: y - h/2 - d}, {X: x + 9, Y: y - h/2 + d}, {X: x - 9 - w, Y: y - h/2 + d}} {
+			r.W, r.H = w, h
+			if r.X >= p.X+2 && r.X+w <= p.X+p.W-2 && r.Y >= p.Y+2 && r.Y+h <= p.Y+p.H-2 && !a.covered(r, &s.required, &s.available) {
+				return r, true
+			}
+		}
+	}
+	return best, false
 }
 
 // dot marks a speed on the curve of power required.
@@ -224,7 +244,7 @@ func (a *App) drawMarked(f *ui.Frame) {
 	r := scene.Rect{X: clamp(x-w/2, p.X, p.X+p.W-w), Y: p.Y + 2, W: w, H: 24}
 	f.Scene.FillRect(r, 5, t.Accent)
 	f.Label(scene.SmallBold, r, scene.Center, text, t.OnBold)
-	a.chart.labels = append(a.chart.labels, r)
+	a.chart.labels = append(a.chart.labels, r, scene.Rect{X: x - 1, Y: p.Y, W: 2, H: p.H})
 }
 
 // drawCurveNames writes the curves' names beside them, where nothing else stands.
@@ -232,6 +252,19 @@ func (a *App) drawCurveNames(f *ui.Frame) {
 	t := f.Theme
 	a.nameCurve(f, "available", &a.solved.available, &a.solved.required, t.Available, true)
 	a.nameCurve(f, "required", &a.solved.required, &a.solved.available, t.Required, false)
+}
+
+// drawSpeedName writes the unit and kind of the speeds at the foot of the plot.
+func (a *App) drawSpeedName(f *ui.Frame) {
+	p, text := a.layout.plot, a.units.SpeedLabel()
+	w := scene.Measure(scene.Small, text)
+	r := scene.Rect{X: p.X + p.W - w - 4, Y: p.Y + p.H - 22, W: w, H: 20}
+	if left := (scene.Rect{X: p.X + 6, Y: r.Y, W: w, H: r.H}); a.covered(r, &a.solved.required, &a.solved.available) {
+		if r = left; a.covered(r) {
+			return
+		}
+	}
+	f.Label(scene.Small, r, scene.Left, text, f.Theme.Muted)
 }
 
 // nameCurve finds a free place above a curve for its name: from the left for the curve of power available, from the
@@ -245,11 +278,12 @@ func (a *App) nameCurve(f *ui.Frame, name string, curve, other *[curvePoints]flo
 			i = curvePoints - 1 - n
 		}
 		x, y := ch.x.Pos(s.speed[i]), ch.y.Pos(curve[i])
-		if math.IsNaN(y) || y < p.Y+h+8 || y > p.Y+p.H-4 {
+		if math.IsNaN(y) || y < p.Y+8 || y > p.Y+p.H-4 {
 			continue
 		}
-		for _, r := range [...]scene.Rect{{X: x - w - 8, Y: y - h - 6, W: w, H: h}, {X: x - w/2, Y: y + 10, W: w, H: h}} {
-			if r.X < p.X+4 || r.X+w > p.X+p.W-4 || r.Y+h > p.Y+p.H-2 || a.covered(r, curve, other) {
+		for _, r := range [...]scene.Rect{{X: x - w - 8, Y: y - h - 6, W: w, H: h}, {X: x - w/2, Y: y + 10, W: w, H: h},
+			{X: x + 8, Y: y - h - 6, W: w, H: h}, {X: x - w - 8, Y: y + 6, W: w, H: h}} {
+			if r.Y < p.Y+2 || r.X < p.X+4 || r.X+w > p.X+p.W-4 || r.Y+h > p.Y+p.H-2 || a.covered(r, curve, other) {
 				continue
 			}
 			f.Label(scene.BodyBold, r, scene.Left, name, c)
@@ -284,20 +318,26 @@ func (a *App) covered(r scene.Rect, curves ...*[curvePoints]float64) bool {
 func (a *App) drawShortfall(f *ui.Frame) {
 	t, p := f.Theme, a.layout.plot
 	head, lines := a.shortfallWords()
+	title, body := scene.Title, scene.Body
 	width := math.Min(p.W-16, 460)
-	in := width - 28
-	h := 24 + scene.LineHeight(scene.Title)
-	for _, l := range lines {
-		h += f.ParagraphHeight(scene.Body, in, l) + 4
+	if a.layout.compact {
+		title, body, width = scene.BodyBold, scene.Small, p.W
 	}
-	r := scene.Rect{X: p.X + (p.W-width)/2, Y: p.Y + 10, W: width, H: math.Min(h, p.H-12)}
+	const pad = 12.0
+	in := width - 2*pad
+	h := 2*pad + scene.LineHeight(title)
+	for _, l := range lines {
+		h += f.ParagraphHeight(body, in, l) + 2
+	}
+	// In a low window the box covers the rail of speeds too: there is no band on it to be seen.
+	r := scene.Rect{X: p.X + (p.W-width)/2, Y: p.Y + 8, W: width, H: math.Min(h, a.layout.mass.Y-p.Y-12)}
 	f.Box(r, 8, t.BadBack, t.Bad)
 	f.PushView(r)
-	y := r.Y + 12
-	f.Label(scene.Title, scene.Rect{X: r.X + 14, Y: y, W: in, H: scene.LineHeight(scene.Title)}, scene.Left, head, t.Bad)
-	y += scene.LineHeight(scene.Title) + 2
+	y := r.Y + pad - 2
+	f.Label(title, scene.Rect{X: r.X + pad, Y: y, W: in, H: scene.LineHeight(title)}, scene.Left, head, t.Bad)
+	y += scene.LineHeight(title) + 2
 	for _, l := range lines {
-		y += f.Paragraph(scene.Body, scene.Rect{X: r.X + 14, Y: y, W: in, H: r.Y + r.H - y}, l, t.Ink) + 4
+		y += f.Paragraph(body, scene.Rect{X: r.X + pad, Y: y, W: in, H: r.Y + r.H - y}, l, t.Ink) + 2
 	}
 	f.PopView()
 	a.chart.labels = append(a.chart.labels, r)
@@ -315,7 +355,7 @@ func (a *App) shortfallWords() (head string, lines []string) {
 		v := a.solved.kindFromTAS(ans.ShortfallTAS, kind)
 		lines = append(lines, u.PowerFine(ans.Shortfall).String()+" short at the best speed, "+u.SpeedWhole(v).String()+" "+kind+".")
 	}
-	if text := allowanceText(u, &ans.Level); text != "" {
+	if text := allowanceText(u, &ans.Level, a.layout.compact); text != "" {
 		lines = append(lines, "Possible below "+text+".")
 	} else {
 		lines = append(lines, "No weight and no height in the model's range makes it possible.")

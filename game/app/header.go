@@ -12,16 +12,20 @@ func (a *App) drawHeader(f *ui.Frame) {
 	t, l := f.Theme, &a.layout
 	back := scene.Rect{X: l.window.X, Y: l.window.Y, W: l.window.W, H: l.header.Y + l.header.H}
 	f.Scene.FillRect(back, 0, t.Bar)
-	if l.format == phone {
+	if l.tabs.Y != l.header.Y {
 		f.Scene.FillRect(scene.Rect{X: l.window.X, Y: l.tabs.Y, W: l.window.W, H: l.tabs.H}, 0, t.Bar)
 	}
 	bar := ui.Trim(l.header, 0, l.margin-12, 0, l.margin)
 	bar = a.drawTools(f, bar)
 	tabs := []ui.Choice{{ID: "tab/chart", Text: "Chart", Selected: a.view.screen == screenChart},
 		{ID: "tab/aeroplane", Text: "Aeroplane", Selected: a.view.screen == screenAeroplane}}
-	if l.format == phone {
+	switch {
+	case l.tabs.Y != l.header.Y:
 		ui.TabBar(f, l.tabs, tabs, true)
-	} else {
+	case l.format == phone:
+		ui.TabBar(f, bar, tabs, true)
+		return
+	default:
 		room := 0.0
 		for _, c := range tabs {
 			room += math.Max(ui.MinTarget, math.Ceil(scene.Measure(scene.BodyBold, c.Text)+42))
@@ -49,6 +53,9 @@ func (a *App) drawTools(f *ui.Frame, r scene.Rect) scene.Rect {
 		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share: copy the link", Bold: true},
 		{ID: "redo", Icon: ui.IconRedo, Label: named("Redo", redo), Disabled: redo == ""},
 		{ID: "undo", Icon: ui.IconUndo, Label: named("Undo", undo), Disabled: undo == ""},
+	}
+	if a.layout.format == phone && a.layout.low { // the menu has it too
+		tools = append(tools[:1], tools[2:]...)
 	}
 	for i := range tools {
 		if a.layout.compact || a.layout.safe.W < 900 {

@@ -19,7 +19,8 @@ const (
 // layout is where everything stands, in logical pixels.
 type layout struct {
 	format  format
-	compact bool // narrow: small margins, icons for words
+	compact bool // narrow or low: small margins, icons for words
+	low     bool // no height to spare: the tabs take the place of the name
 
 	window scene.Rect // all of it
 	safe   scene.Rect // without the insets
@@ -27,15 +28,16 @@ type layout struct {
 	tabs   scene.Rect // a row of its own on the phone, else inside the header
 	body   scene.Rect // what a screen other than the chart has for itself
 
-	plot     scene.Rect // curves
-	altitude scene.Rect // column of the density-altitude rail with its labels
-	band     scene.Rect // block of the speed rail
-	mass     scene.Rect // block of the weight rail
-	strip    scene.Rect // cautions or the summary
-	panel    scene.Rect // limits
-	columns  int        // of the panel
-	row      float64    // height of a limit's row
-	margin   float64
+	plot       scene.Rect // curves
+	altitude   scene.Rect // column of the density-altitude rail with its labels
+	band       scene.Rect // block of the speed rail
+	mass       scene.Rect // block of the weight rail
+	strip      scene.Rect // cautions or the summary
+	panel      scene.Rect // limits
+	columns    int        // of the panel
+	smallNames bool       // of the limits: not all fit in the larger style
+	row        float64    // height of a limit's row
+	margin     float64
 }
 
 // layoutFor divides a window of w by h with the insets given.
@@ -50,7 +52,8 @@ func layoutFor(w, h, top, right, bottom, left float64) layout {
 	default:
 		l.format = phone
 	}
-	l.compact = l.format == phone || l.safe.W < 700
+	l.low = l.safe.H < 560
+	l.compact = l.format == phone || l.safe.W < 700 || l.low
 	l.margin = 20
 	if l.compact {
 		l.margin = 12
@@ -58,7 +61,7 @@ func layoutFor(w, h, top, right, bottom, left float64) layout {
 	rest := l.safe
 	l.header, rest = ui.CutTop(rest, 52)
 	l.tabs = l.header
-	if l.format == phone {
+	if l.format == phone && !l.low {
 		l.tabs, rest = ui.CutTop(rest, 48)
 	}
 	l.body, l.row = rest, 50
@@ -79,28 +82,28 @@ func (l *layout) wide(r scene.Rect) {
 		l.row = 47
 	}
 	strip := 76.0
-	if r.H < 560 {
-		strip = 52
+	if l.low {
+		strip = 44
 	}
 	l.strip, r = ui.CutBottom(r, strip)
-	l.chart(r, 128)
+	l.chart(r, 116)
 }
 
 // tall places the chart above the panel.
 func (l *layout) tall(r scene.Rect) {
 	l.columns = 2
-	need := 506.0 // panel with everything in it, two columns
+	need := 456.0 // panel with everything in it, two columns
 	chart := r.H - need - 60
 	if l.format == phone {
-		chart = clamp(0.56*r.H, 250, 470)
+		chart = clamp(0.56*r.H, 258, 470)
 	} else {
 		chart = math.Max(chart, 0.5*r.H)
 	}
 	strip := 60.0
-	if r.H < 520 {
-		strip = 44
+	if l.low {
+		strip = 38
 	}
-	c, rest := ui.CutTop(r, math.Min(chart, r.H-strip-96))
+	c, rest := ui.CutTop(r, math.Min(chart, r.H-strip-124))
 	l.strip, l.panel = ui.CutTop(rest, strip)
 	l.chart(c, 108)
 }
@@ -109,11 +112,11 @@ func (l *layout) tall(r scene.Rect) {
 func (l *layout) chart(r scene.Rect, massHeight float64) {
 	head, left, altitude, band := 36.0, 64.0, 192.0, 80.0
 	if l.compact {
-		head, left, altitude, band = 28, 38, 116, 66
-		massHeight = 88
+		head, left, altitude, band = 28, 38, 138, 66
+		massHeight = 94
 	}
-	if r.H < 360 {
-		head, band, massHeight = 26, 62, 78
+	if l.low {
+		head, band = 26, 58
 	}
 	l.mass, r = ui.CutBottom(r, massHeight)
 	var plotRow scene.Rect
@@ -126,7 +129,11 @@ func (l *layout) chart(r scene.Rect, massHeight float64) {
 	l.band.X, l.band.W = l.plot.X, l.plot.W
 	// The tracks of the rails, which keep room for half a handle at their ends, end where the plot does.
 	l.mass.X, l.mass.W = l.plot.X-railPad, l.plot.W+2*railPad
-	l.altitude.X, l.altitude.W = l.altitude.X+altitudeGap, l.altitude.W-altitudeGap
+	if l.compact {
+		l.mass.W -= railPad // clear of the other rail
+	} else {
+		l.altitude.X, l.altitude.W = l.altitude.X+altitudeGap, l.altitude.W-altitudeGap
+	}
 	bottom := l.altitude.Y + l.altitude.H + railPad
 	if l.compact {
 		bottom = l.altitude.Y + l.altitude.H

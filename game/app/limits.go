@@ -132,7 +132,7 @@ func (a *App) facts() []Fact {
 		allowance("climb", "Climb of "+u.Gradient(g).String(), &ans.Climb)
 	}
 	air := &a.solved.cond.Air
-	add("density_altitude", "Density altitude", u.AltitudeFine(air.DensityAltitude).String(), air.DensityAltitude)
+	add("density_altitude", "Density altitude", u.AltitudeCoarse(air.DensityAltitude).String(), air.DensityAltitude)
 	add("pressure_altitude", "Pressure altitude", u.AltitudeWhole(air.PressureAltitude).String(), air.PressureAltitude)
 	add("temperature", "Outside air temperature", figure.Celsius(air.Temperature).String(), air.Temperature)
 	add("mass", "Weight", u.MassWhole(a.solved.cond.Mass).String(), a.solved.cond.Mass)

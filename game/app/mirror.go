@@ -25,7 +25,7 @@ func (a *App) describe() {
 // summary is the day in one sentence.
 func (a *App) summary() string {
 	ans, u := &a.solved.answer, &a.units
-	where := " at " + u.MassWhole(a.solved.cond.Mass).String() + " and a density altitude of " + u.AltitudeFine(a.solved.cond.Air.DensityAltitude).String() + "."
+	where := " at " + u.MassWhole(a.solved.cond.Mass).String() + " and a density altitude of " + u.AltitudeCoarse(a.solved.cond.Air.DensityAltitude).String() + "."
 	slow, fast := &ans.Limits[perf.SlowestLevel], &ans.Limits[perf.FastestLevel]
 	if ans.Outcome != perf.LevelFlight || !slow.Applies || !fast.Applies {
 		_, lines := a.shortfallWords()

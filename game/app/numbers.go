@@ -33,42 +33,51 @@ func (a *App) fuelText() string {
 }
 
 // allowanceText is the inverse answer in words: "912 kg, or below 17 400 ft density altitude"; "" where there is none.
-func allowanceText(u *figure.Units, a *perf.Allowance) string {
+func allowanceText(u *figure.Units, a *perf.Allowance, short bool) string {
 	s := ""
 	if a.MassApplies {
 		s = u.MassWhole(a.Mass).String()
 	}
 	if a.AltitudeApplies {
-		if s != "" {
+		switch {
+		case short && s != "":
+			s += " or "
+		case s != "":
 			s += ", or below "
 		}
-		s += u.AltitudeCoarse(a.DensityAltitude).String() + " density altitude"
+		s += u.AltitudeCoarse(a.DensityAltitude).String()
+		if !short {
+			s += " density altitude"
+		}
 	}
 	return s
 }
 
-// plainTicks is the ticks with their figures written as everywhere else on the screen.
+// plainTicks keeps the ticks of an axis, their figures written as everywhere else on the screen.
 type plainTicks struct {
-	ui.Ticks
-	from *ui.Tick
-	list []ui.Tick
+	lo, hi, length, spacing, factor float64
+	list                            []ui.Tick
 }
 
 // For is the ticks for lo..hi on length pixels, about spacing or more apart.
 func (t *plainTicks) For(lo, hi, length, spacing float64) []ui.Tick {
-	ticks := t.Ticks.For(lo, hi, length, spacing)
-	if len(ticks) == 0 {
-		return nil
-	}
-	if t.from == &ticks[0] && len(t.list) == len(ticks) && t.list[0].Value == ticks[0].Value && t.list[len(ticks)-1].Value == ticks[len(ticks)-1].Value {
+	return t.scaled(lo, hi, length, spacing, 1)
+}
+
+// scaled is For with the figures written in units of factor.
+func (t *plainTicks) scaled(lo, hi, length, spacing, factor float64) []ui.Tick {
+	if t.list != nil && t.lo == lo && t.hi == hi && t.length == length && t.spacing == spacing && t.factor == factor {
 		return t.list
 	}
-	t.from, t.list = &ticks[0], t.list[:0]
-	for _, k := range ticks {
-		if k.Value == float64(int64(k.Value)) {
-			k.Text = figure.Number(k.Value, 0)
+	t.lo, t.hi, t.length, t.spacing, t.factor = lo, hi, length, spacing, factor
+	step := ui.NiceStep(hi-lo, math.Max(1, length/math.Max(1, spacing)))
+	t.list = ui.AppendTicks(t.list[:0], lo, hi, step)
+	for i := range t.list {
+		decimals := 0
+		for v := step / factor; decimals < 6 && v != math.Trunc(v); decimals++ {
+			v *= 10
 		}
-		t.list = append(t.list, k)
+		t.list[i].Text = figure.Number(t.list[i].Value/factor, decimals)
 	}
 	return t.list
 }
@@ -76,15 +85,16 @@ func (t *plainTicks) For(lo, hi, length, spacing float64) []ui.Tick {
 // measure is how a number of the case file is shown and typed.
 type measure struct {
 	figure.Entry
-	unit string
-	k    float64 // shown = Entry's figure * k
+	unit     string
+	k        float64 // shown = Entry's figure * k
+	decimals int     // at most
 }
 
 func (m measure) shown(file float64) float64 { return m.FromFile(file) * m.k }
 func (m measure) file(shown float64) float64 { return m.ToFile(shown / m.k) }
 
 // text is a number of the file as shown, without its unit.
-func (m measure) text(file float64) string { return significant(m.shown(file)) }
+func (m measure) text(file float64) string { return plain(m.shown(file), m.decimals) }
 
 // withUnit is text with the unit.
 func (m measure) withUnit(file float64) string {
@@ -93,19 +103,23 @@ func (m measure) withUnit(file float64) string {
 
 // allowed is the range of the field as typed; its ends are rounded inwards.
 func (m measure) allowed() string {
-	return significant(m.Min*m.k) + " to " + figure.Figure{Number: significant(m.Max * m.k), Unit: m.unit}.String()
+	return plain(m.Min*m.k, m.decimals) + " to " + figure.Figure{Number: plain(m.Max*m.k, m.decimals), Unit: m.unit}.String()
 }
 
-// significant writes x with at most 6 significant digits and no needless zeros.
-func significant(x float64) string {
-	if math.IsNaN(x) || math.IsInf(x, 0) {
+// plain writes x with at most so many decimals, 6 significant digits, and no needless zeros.
+func plain(x float64, decimals int) string {
+	y, err := strconv.ParseFloat(strconv.FormatFloat(x, 'g', 6, 64), 64)
+	if err != nil || math.IsNaN(y) || math.IsInf(y, 0) {
 		return figure.None
 	}
-	y, err := strconv.ParseFloat(strconv.FormatFloat(x, 'g', 6, 64), 64)
-	if err != nil || y == 0 {
+	s := figure.Number(y, decimals)
+	if strings.Contains(s, ".") {
+		s = strings.TrimRight(strings.TrimRight(s, "0"), ".")
+	}
+	if s == figure.Minus+"0" {
 		return "0"
 	}
-	return strings.Replace(strconv.FormatFloat(y, 'f', -1, 64), "-", figure.Minus, 1)
+	return s
 }
 
 func isDiameter(path string) bool { return strings.HasSuffix(path, "diameter_m") }
@@ -118,12 +132,22 @@ func isPercent(path string) bool {
 // gradients are in per cent (common practice).
 func measureOf(f *casefile.Field, u figure.Units) measure {
 	e := u.Entry(*f)
-	m := measure{e, e.Unit, 1}
+	m := measure{e, e.Unit, 1, 6}
+	switch f.Dimension {
+	case casefile.Altitude, casefile.Revolutions:
+		m.decimals = 0
+	case casefile.Mass, casefile.FuelMass, casefile.Speed, casefile.Temperature, casefile.Angle, casefile.Time, casefile.Power, casefile.Energy:
+		m.decimals = 1
+	case casefile.Correction, casefile.Pressure, casefile.Rate:
+		m.decimals = 2
+	case casefile.Length, casefile.Area:
+		m.decimals = 3
+	}
 	switch {
 	case f.Dimension == casefile.Length && u.Length.Name == "ft" && isDiameter(f.Path):
-		m.unit, m.k = "in", 12
+		m.unit, m.k, m.decimals = "in", 12, 2
 	case isPercent(f.Path):
-		m.unit, m.k = "%", 100
+		m.unit, m.k, m.decimals = "%", 100, 2
 	}
 	return m
 }

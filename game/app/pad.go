@@ -91,9 +91,9 @@ func (a *App) checkNumber(path, target string, typed float64) string {
 	v := a.fileNumber(path, typed)
 	if v < f.Min || v > f.Max {
 		if typed < m.Min*m.k {
-			return "At least " + figure.Figure{Number: significant(m.Min * m.k), Unit: m.unit}.String()
+			return "At least " + figure.Figure{Number: plain(m.Min*m.k, m.decimals), Unit: m.unit}.String()
 		}
-		return "At most " + figure.Figure{Number: significant(m.Max * m.k), Unit: m.unit}.String()
+		return "At most " + figure.Figure{Number: plain(m.Max*m.k, m.decimals), Unit: m.unit}.String()
 	}
 	next := a.doc.committed.Clone()
 	if err := a.put(next, path, target, v); err != nil {

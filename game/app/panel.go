@@ -28,13 +28,17 @@ func (a *App) drawPanel(f *ui.Frame) {
 	} else {
 		f.Scene.Line(r.X, r.Y, r.X+r.W, r.Y, 1, t.Line)
 	}
-	foot, r := ui.CutBottom(r, panelFoot)
+	footHeight, headHeight := panelFoot, panelHead
+	if a.layout.low {
+		footHeight, headHeight = 24, 46
+	}
+	foot, r := ui.CutBottom(r, footHeight)
 	a.drawAdvisory(f, foot)
-	head, r := ui.CutTop(r, panelHead)
+	head, r := ui.CutTop(r, headHeight)
 	a.drawPanelHead(f, ui.Trim(head, 0, a.layout.margin, 0, a.layout.margin))
 	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
 	height := a.limitsHeight() + a.factsHeight()
-	in.Y = f.BeginScroll("panel", "Speeds", r, &a.view.panel, height)
+	in.Y = f.BeginScroll("panel", "Speeds", "", r, &a.view.panel, height)
 	a.drawLimits(f, in)
 	in.Y += a.limitsHeight()
 	a.drawFacts(f, in)
@@ -43,10 +47,13 @@ func (a *App) drawPanel(f *ui.Frame) {
 
 // drawAdvisory draws the line that stands on every screen; where it is too long it says the same shorter.
 func (a *App) drawAdvisory(f *ui.Frame, r scene.Rect) {
-	r = ui.Trim(r, 0, 12, 0, a.layout.margin)
+	r = ui.Trim(r, 0, 4, 0, min(a.layout.margin, 16))
 	text := advisory
 	if scene.Measure(scene.Small, text) > r.W {
 		text = advisoryShort
+	}
+	if scene.Measure(scene.Small, text) > r.W {
+		text = advisoryLeast
 	}
 	f.Label(scene.Small, r, scene.Left, text, f.Theme.Muted)
 }
@@ -62,7 +69,7 @@ func (a *App) drawPanelHead(f *ui.Frame, r scene.Rect) {
 	unit := a.units.Speed.Name
 	uw := scene.Measure(scene.Small, unit)
 	seg, rest := ui.CutRight(r, w)
-	seg.Y, seg.H = r.Y+7, r.H-14
+	seg.Y, seg.H = r.Y+5, r.H-10
 	ui.Segments(f, seg, choices)
 	if rest.W > uw+10 {
 		f.Label(scene.Small, ui.Trim(rest, 0, 10, 0, 0), scene.Right, unit, f.Theme.Muted)
@@ -97,6 +104,11 @@ func (a *App) drawLimits(f *ui.Frame, r scene.Rect) {
 	rows := a.rows
 	columns := a.layout.columns
 	per := (len(rows) + columns - 1) / columns
+	a.layout.smallNames = false
+	width := (r.W-columnGap*float64(columns-1))/float64(columns) - scene.Measure(scene.Figure, "000") - 8
+	for i := range rows {
+		a.layout.smallNames = a.layout.smallNames || scene.Measure(scene.Body, rows[i].name) > width
+	}
 	for i := range rows {
 		cell := r
 		if columns > 1 {
@@ -127,6 +139,9 @@ func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
 	case perf.NeverExceed:
 		ink, style = t.Bad, scene.BodyBold
 	}
+	if a.layout.smallNames {
+		style = smaller(style)
+	}
 	valueWidth := math.Max(scene.Measure(scene.Figure, "000"), scene.Measure(scene.Figure, row.value))
 	value, words := ui.CutRight(r, valueWidth)
 	base := math.Round(r.Y + 0.44*r.H)
@@ -138,32 +153,49 @@ func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
 	} else if row.aside != "" {
 		aside = row.aside
 	}
-	second := row.second
-	if words.W < scene.Measure(scene.Body, row.name) {
-		style = smaller(style)
-	}
 	free := words.W - scene.Measure(style, row.name)
-	if w := scene.Measure(scene.Small, aside); aside != "" && w+14 <= free {
-		x := words.X + words.W
-		if words.W > 190 { // the symbols stand in a column
-			x = math.Max(words.X+math.Min(0.68*words.W, 170)+w/2, words.X+scene.Measure(style, row.name)+14+w)
-			x = math.Min(x, words.X+words.W)
-		}
-		f.Scene.Label(scene.Small, x, base, scene.Right, aside, t.Muted)
-	} else if aside != "" {
-		second = aside + " · " + second
+	inline := ""
+	if w := scene.Measure(scene.Small, aside); aside != "" && w+14 <= free && words.W > 190 { // the symbols stand in a column
+		x := math.Max(words.X+0.7*words.W-w/2, words.X+scene.Measure(style, row.name)+14)
+		f.Scene.Label(scene.Small, math.Round(math.Min(x, words.X+words.W-w)), base, scene.Left, aside, t.Muted)
+	} else {
+		inline = aside
 	}
 	f.Label(style, scene.Rect{X: words.X, Y: base - 14, W: words.W, H: 16}, scene.Left, row.name, ink)
-	for scene.Measure(scene.Small, second) > words.W {
-		cut := strings.LastIndex(second, ", ")
-		if cut < 0 {
-			break
-		}
-		second = second[:cut]
-	}
-	f.Label(scene.Small, scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}, scene.Left, second, t.Muted)
+	f.Label(scene.Small, scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}, scene.Left, fitting(row.second, inline, words.W), t.Muted)
 	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.second,
 		Value: inKind(&a.solved.answer.Limits[row.key], a.speedKind()), Bounds: touch, Hit: touch, Selected: selected})
+}
+
+// fitting is the longest form of a second figure that fits: with what stands beside the name, without, and without what
+// follows a comma or says on how much fuel.
+func fitting(second, aside string, width float64) string {
+	forms := []string{second}
+	if aside != "" {
+		forms = []string{aside + " · " + second, second}
+		if second == "" {
+			return aside
+		}
+	}
+	if cut := strings.LastIndex(second, ", "); cut > 0 {
+		second = second[:cut]
+		if aside != "" {
+			forms = append(forms, aside+" · "+second)
+		}
+		forms = append(forms, second)
+	}
+	if cut := strings.Index(second, " on "); cut > 0 {
+		if aside != "" {
+			forms = append(forms, second[:cut]+" · "+aside)
+		}
+		forms = append(forms, second[:cut])
+	}
+	for _, s := range forms {
+		if scene.Measure(scene.Small, s) <= width {
+			return s
+		}
+	}
+	return forms[len(forms)-1]
 }
 
 // smaller is the small style of the same weight.
@@ -202,7 +234,7 @@ func (a *App) factLines() []factLine {
 			value += u.AltitudeCoarse(w.DensityAltitude).String()
 		}
 		if value != "" {
-			lines = append(lines, factLine{name, "", value})
+			lines = append(lines, factLine{name, "weight / height", value})
 		}
 	}
 	allowance("Level up to", &ans.Level)
@@ -210,26 +242,34 @@ func (a *App) factLines() []factLine {
 		allowance(u.Gradient(g).String()+" up to", &ans.Climb)
 	}
 	if ans.Turn.Applies {
-		lines = append(lines, factLine{"Turn", "sustained", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
+		lines = append(lines, factLine{"Tightest turn", "bank / radius", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
 	}
 	a.facted = lines
 	return lines
 }
 
+// factColumns is in how many columns the lines stand.
+func (a *App) factColumns() int {
+	if a.layout.columns > 1 && a.layout.panel.W < 560 {
+		return 1
+	}
+	return a.layout.columns
+}
+
 func (a *App) factsHeight() float64 {
-	n := len(a.factLines())
-	return panelSection*2 + panelLine*float64((n+a.layout.columns-1)/a.layout.columns)
+	n, columns := len(a.factLines()), a.factColumns()
+	return panelSection*2 + panelLine*float64((n+columns-1)/columns)
 }
 
 // drawFacts draws ceilings, allowances and turn.
 func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
 	t := f.Theme
-	lines := a.factLines()
-	per := (len(lines) + a.layout.columns - 1) / a.layout.columns
+	lines, columns := a.factLines(), a.factColumns()
+	per := (len(lines) + columns - 1) / columns
 	for i := range lines {
 		l, c := &lines[i], r
-		if a.layout.columns > 1 {
-			c = ui.Cell(r, a.layout.columns, 1, i/per, 0, columnGap)
+		if columns > 1 {
+			c = ui.Cell(r, columns, 1, i/per, 0, columnGap)
 		}
 		if i%per == 0 {
 			f.Scene.Line(c.X, r.Y, c.X+c.W, r.Y, 1, t.Line)

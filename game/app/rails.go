@@ -5,7 +5,6 @@ import (
 	"strconv"
 	"time"
 
-	"levelspan/game/scene"
 	"levelspan/game/ui"
 	"levelspan/perf"
 	"levelspan/perf/casefile"
@@ -52,10 +51,11 @@ func (a *App) altitudeRail(t *ui.Theme) ui.Rail {
 			figure.Celsius(air.Temperature).String(),
 		Notes:  []string{"PA " + u.AltitudeWhole(air.PressureAltitude).Number, figure.Celsius(air.Temperature).String()},
 		Filled: true}
-	if a.layout.compact {
-		rail.Title = "DA, " + u.Altitude.Name
-	}
 	rail.Ticks = a.chart.altitudeTicks.For(rail.Min, rail.Max, a.layout.altitude.H, 34)
+	if a.layout.compact { // no room for zeros
+		rail.Title = "DA, 1000 " + u.Altitude.Name
+		rail.Ticks = a.chart.altitudeTicks.scaled(rail.Min, rail.Max, a.layout.altitude.H, 34, 1000)
+	}
 	if at, ok := fieldAir(c, air); ok {
 		rail.Marks = append(rail.Marks, ui.RailMark{At: shown(u.Altitude, at.DensityAltitude), Text: "field"})
 	}
@@ -245,7 +245,7 @@ func (a *App) bandRail(t *ui.Theme) ui.Rail {
 	kind := a.speedKind()
 	m := a.units.Speed
 	r := a.ranges.speed
-	rail := ui.Rail{Title: a.units.SpeedLabel(), Min: shown(m, r.lo), Max: shown(m, r.hi)}
+	rail := ui.Rail{Min: shown(m, r.lo), Max: shown(m, r.hi)}
 	rail.Ticks = a.chart.speedTicks.For(rail.Min, rail.Max, a.layout.band.W, 56)
 	ans := &a.solved.answer
 	slow, fast, never := &ans.Limits[perf.SlowestLevel], &ans.Limits[perf.FastestLevel], &ans.Limits[perf.NeverExceed]
@@ -269,6 +269,3 @@ func (a *App) bandRail(t *ui.Theme) ui.Rail {
 	}
 	return rail
 }
-
-// bandArea is the speed rail's area: its scale is that of the plot above it.
-func (a *App) bandArea() scene.Rect { return a.layout.band }

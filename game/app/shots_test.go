@@ -65,7 +65,7 @@ var shotViews = []struct {
 }{
 	{"chart", func(p *pilot) {}},
 	{"marked", func(p *pilot) { p.tap("limit/fastest_climb") }},
-	{"no-level-flight", func(p *pilot) { p.setSlider(handleAltitude, 4800); p.setSlider(handleMass, 830) }},
+	{"no-level-flight", func(p *pilot) { p.setSlider(handleMass, 830); p.setSlider(handleAltitude, 6100) }},
 	{"cautions", func(p *pilot) { p.setSlider(handleMass, 820) }},
 	{"keypad", func(p *pilot) { p.event(ui.Event{Kind: ui.Activate, ID: handleMass}); p.tap("key/7"); p.tap("key/2") }},
 	{"menu", func(p *pilot) { p.tap("menu") }},

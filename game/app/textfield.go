@@ -113,9 +113,7 @@ func (a *App) focused(act *ui.Action) {
 	}
 	if a.router.FocusVisible {
 		for i := range a.view.forms {
-			if a.view.forms[i].Has(act.ID, a.view.forms[i].sections) {
-				a.view.forms[i].Reveal(act.ID)
-			}
+			a.view.forms[i].Reveal(act.ID) // the form that has it obeys
 		}
 	}
 	a.dirty = true

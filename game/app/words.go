@@ -69,4 +69,5 @@ func setByName(s perf.SetBy) string {
 const (
 	advisory      = "Advisory. Handbook, placards and local rules govern."
 	advisoryShort = "Advisory only: the handbook governs."
+	advisoryLeast = "Advisory only."
 )
