@@ -26,8 +26,11 @@ func (s Scale) Value(p float64) float64 {
 	return s.V0 + (p-s.P0)/(s.P1-s.P0)*(s.V1-s.V0)
 }
 
-// Clamp is v confined to V0..V1.
+// Clamp is v confined to V0..V1; V0 for what is not a number.
 func (s Scale) Clamp(v float64) float64 {
+	if math.IsNaN(v) {
+		return s.V0
+	}
 	return math.Max(math.Min(s.V0, s.V1), math.Min(math.Max(s.V0, s.V1), v))
 }
 

@@ -72,7 +72,7 @@ const (
 	DragStart                    // the slop is passed; X - X0 is what lies beyond it, so that nothing jumps
 	DragMove                     // moves of one pointer that follow one another in a batch are merged into one
 	DragEnd                      // the last move and the release
-	DragCancel                   // cancelled or its control vanished: the value of the drag's start comes back
+	DragCancel                   // cancelled, by Escape too, or its control vanished: the value of the drag's start comes back
 	Scroll                       // region ID: its scroll offset grows by DX, DY; the app clamps
 	Press                        // key on the focused control ID ("" none): Key, Rune
 	Focus                        // ID ("" none) has the focus now

@@ -88,6 +88,11 @@ func (r *Router) key(dst []Action, e *Event, controls []Control, top int) []Acti
 	if e.Key == KeyTab {
 		return r.walk(dst, e, controls, top)
 	}
+	if e.Key == KeyEscape {
+		if d, ok := r.escape(dst, e.Time); ok {
+			return d
+		}
+	}
 	c := r.focused(controls, top)
 	id := ""
 	if c != nil {

@@ -40,6 +40,7 @@ type lastTap struct {
 	x, y float64
 	at   time.Duration
 	set  bool
+	used bool // it was a double tap's second: no third makes another
 }
 
 func (p *pointer) shows() bool {
@@ -81,7 +82,7 @@ func (r *Router) slot(number int, free bool) *pointer {
 }
 
 func (r *Router) pointer(dst []Action, e *Event, controls []Control, top int) []Action {
-	ok := finite(e.X, e.Y)
+	ok := placed(e.X, e.Y)
 	switch e.Kind {
 	case PointerDown:
 		if ok {
@@ -117,7 +118,7 @@ func (r *Router) down(dst []Action, e *Event, controls []Control, top int) []Act
 		x0: e.X, y0: e.Y, x: e.X, y: e.Y, ax: e.X, ay: e.Y}
 	r.FocusVisible = false
 	if r.tap.set && r.tap.id != "" && within(r.tap, e) && !usable(find(controls, r.tap.id), top) {
-		return dst // second half of a double tap on something that went away: not meant for what lies beneath
+		return dst // one more tap on something that went away or was covered: not meant for what is there now
 	}
 	c := hit(controls, top, e.X, e.Y)
 	g := scroller(controls, top, e.X, e.Y, AxisBoth)
@@ -264,13 +265,12 @@ func (r *Router) up(dst []Action, p *pointer, e *Event, controls []Control, top 
 		dst = r.take(dst, c, e.Time)
 		a := Action{Kind: Tap, ID: c.ID, X: p.x, Y: p.y, X0: p.x0, Y0: p.y0, Shift: e.Shift, Time: e.Time}
 		dst = append(dst, a)
-		if r.tap.set && r.tap.id == c.ID && within(r.tap, e) {
+		second := r.tap.set && !r.tap.used && r.tap.id == c.ID && within(r.tap, e)
+		if second {
 			a.Kind = DoubleTap
 			dst = append(dst, a)
-			r.tap = lastTap{}
-		} else {
-			r.tap = lastTap{id: c.ID, x: p.x, y: p.y, at: e.Time, set: true}
 		}
+		r.tap = lastTap{id: c.ID, x: p.x, y: p.y, at: e.Time, set: true, used: second}
 	}
 	return dst
 }

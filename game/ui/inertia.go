@@ -96,7 +96,7 @@ func (r *Router) coast(dst []Action, controls []Control, top int, now time.Durat
 
 // wheel scrolls the innermost region under the pointer that can go that way.
 func (r *Router) wheel(dst []Action, e *Event, controls []Control, top int) []Action {
-	if !finite(e.X, e.Y, e.DX, e.DY) {
+	if !placed(e.X, e.Y) || !placed(e.DX, e.DY) {
 		return dst
 	}
 	dx, dy := e.DX, e.DY

@@ -71,7 +71,7 @@ func (k *Keypad) card(f *Frame, r scene.Rect) {
 	f.Box(r, 16, f.Theme.Panel, f.Theme.Edge)
 }
 
-// beside is a card right of anchor, else left of it, else in the middle of area.
+// beside is a card right of anchor, else left of, below or above it, else in the middle of area.
 func beside(area, anchor scene.Rect, w, h float64) scene.Rect {
 	const gap = 24
 	r := Centered(area, w, h)
@@ -84,8 +84,12 @@ func beside(area, anchor scene.Rect, w, h float64) scene.Rect {
 		r.X = anchor.X + anchor.W + gap
 	case anchor.X-gap-w >= area.X+8:
 		r.X = anchor.X - gap - w
+	case anchor.Y+anchor.H+gap+h <= area.Y+area.H-8:
+		r.Y = anchor.Y + anchor.H + gap
+	case anchor.Y-gap-h >= area.Y+8:
+		r.Y = anchor.Y - gap - h
 	}
-	return r
+	return Snap(r)
 }
 
 const entryHigh = 64.0

@@ -1,6 +1,7 @@
 package ui
 
 import (
+	"math"
 	"testing"
 
 	"levelspan/game/scene"
@@ -217,5 +218,33 @@ func TestDrawingAllocatesNothing(t *testing.T) {
 		f.Paragraph(scene.Small, scene.Rect{Y: 530, W: 90, H: 60}, "some words on several lines", theme.Ink)
 	}); n != 0 {
 		t.Errorf("%v allocations a frame", n)
+	}
+}
+
+// Numbers that are none give a rail that can be drawn, and a slider with finite values.
+func TestRailTakesGarbage(t *testing.T) {
+	nan, inf := math.NaN(), math.Inf(1)
+	for _, v := range [][3]float64{{nan, nan, nan}, {0, 10, nan}, {0, 10, inf}, {0, 10, -inf}, {-inf, inf, 0}, {10, 0, 5}, {5, 5, 5}} {
+		for _, vertical := range []bool{false, true} {
+			rl := Rail{ID: "handle/x", Title: "x", ValueText: "?", Vertical: vertical, Filled: true, Min: v[0], Max: v[1], Value: v[2],
+				Ticks: []Tick{{nan, "a"}, {0, "b"}, {0, "c"}, {inf, "d"}}, Marks: []RailMark{{At: nan, Text: "m"}, {At: inf, Text: "n"}, {At: 5, Text: "o"}},
+				Zones: []RailZone{{From: nan, To: 5}, {From: -inf, To: inf}, {From: 9, To: 1}, {From: 1, To: 3, FadeLow: inf}}}
+			var s scene.Scene
+			s.Reset(300, 300, 1, scene.Color{})
+			var f Frame
+			f.Begin(&s, Day(), nil)
+			rl.Draw(&f, scene.Rect{W: 200, H: 200})
+			checkControls(t, &f, &s)
+			for _, p := range s.Points {
+				if !finite(p.X, p.Y) {
+					t.Errorf("%v: a point at %v", v, p)
+				}
+			}
+			for _, op := range s.Ops {
+				if !finite(op.Rect.X, op.Rect.Y, op.Rect.W, op.Rect.H) {
+					t.Errorf("%v: %v", v, op.Rect)
+				}
+			}
+		}
 	}
 }

@@ -100,9 +100,11 @@ func (rl *Rail) tickRoom() float64 {
 	return math.Max(w+16, rl.pad()+2)
 }
 
-// Scale is where values lie when the rail is drawn over area: x or, vertical, y.
+// Scale is where values lie when the rail is drawn over area: x or, vertical, y. A rail whose ends are no numbers, or
+// not in order, goes from 0 to 1.
 func (rl *Rail) Scale(area scene.Rect) Scale {
-	s := Scale{V0: rl.Min, V1: rl.Max}
+	var s Scale
+	s.V0, s.V1 = rl.ends()
 	if rl.Vertical {
 		s.P0, s.P1 = area.Y+area.H-rl.pad(), area.Y+rl.titleHeight()+rl.pad()
 		if s.P1 > s.P0 {
@@ -112,6 +114,13 @@ func (rl *Rail) Scale(area scene.Rect) Scale {
 	}
 	s.P0, s.P1 = area.X+rl.pad(), math.Max(area.X+rl.pad(), area.X+area.W-rl.pad())
 	return s
+}
+
+func (rl *Rail) ends() (lo, hi float64) {
+	if !finite(rl.Min, rl.Max) || rl.Min > rl.Max {
+		return 0, 1
+	}
+	return rl.Min, rl.Max
 }
 
 // Middle is the centre line of the track: y or, vertical, x.
@@ -161,8 +170,9 @@ func (rl *Rail) Draw(f *Frame, area scene.Rect) {
 	x, y := rl.At(area)
 	rl.handle(f, x, y)
 	b := scene.Rect{X: x - handleRadius, Y: y - handleRadius, W: 2 * handleRadius, H: 2 * handleRadius}
-	c := Control{ID: rl.ID, Role: RoleSlider, Label: rl.Label, ValueText: rl.Spoken, Value: rl.si(rl.Value),
-		Min: rl.si(rl.Min), Max: rl.si(rl.Max), Step: rl.si(rl.Step) - rl.Offset, Page: rl.si(rl.Page) - rl.Offset,
+	s := rl.Scale(area)
+	c := Control{ID: rl.ID, Role: RoleSlider, Label: rl.Label, ValueText: rl.Spoken, Value: rl.si(s.Clamp(rl.Value)),
+		Min: rl.si(s.V0), Max: rl.si(s.V1), Step: rl.si(rl.Step) - rl.Offset, Page: rl.si(rl.Page) - rl.Offset,
 		Bounds: b, Hit: Grow(b, handleHit, handleHit), Drag: AxisX, Disabled: rl.Disabled, Error: rl.Error}
 	if rl.Vertical {
 		c.Drag = AxisY

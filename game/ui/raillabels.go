@@ -31,7 +31,10 @@ func (s *spans) take(lo, hi float64) {
 	}
 }
 
-func (rl *Rail) inRange(v float64) bool { return v >= rl.Min && v <= rl.Max }
+func (rl *Rail) inRange(v float64) bool {
+	lo, hi := rl.ends()
+	return v >= lo && v <= hi
+}
 
 func (m *RailMark) look(t *Theme) (scene.Style, scene.Color) {
 	style, ink := scene.Small, t.Muted
@@ -191,7 +194,7 @@ func (rl *Rail) drawVertical(f *Frame, area scene.Rect) {
 	if rl.ID != "" {
 		blockLo, blockHi = rl.valueBlock(f, area, x, hy)
 	}
-	rl.marksBeside(f, area, s, m, blockLo, blockHi)
+	rl.marksBeside(f, area, s, m, hy, blockLo, blockHi)
 }
 
 // valueBlock draws the value and its notes beside the handle and returns their upper and lower edge.
@@ -213,7 +216,7 @@ func (rl *Rail) valueBlock(f *Frame, area scene.Rect, x, hy float64) (lo, hi flo
 }
 
 // marksBeside places the names of marks right of a vertical track, apart from each other and from the value.
-func (rl *Rail) marksBeside(f *Frame, area scene.Rect, s Scale, m, blockLo, blockHi float64) {
+func (rl *Rail) marksBeside(f *Frame, area scene.Rect, s Scale, m, hy, blockLo, blockHi float64) {
 	var order [maxLabels]int
 	n := 0
 	for i := range rl.Marks {
@@ -228,12 +231,9 @@ func (rl *Rail) marksBeside(f *Frame, area scene.Rect, s Scale, m, blockLo, bloc
 		order[j] = i
 		n++
 	}
-	middle, lh := (blockLo+blockHi)/2, scene.LineHeight(scene.Small)
-	if blockLo > blockHi {
-		middle = math.Inf(1)
-	}
-	split := 0
-	for split < n && s.Pos(rl.Marks[order[split]].At) <= middle {
+	lh := scene.LineHeight(scene.Small)
+	split := 0 // what lies above the handle is named above the value, what lies below it below
+	for split < n && (rl.ID == "" || s.Pos(rl.Marks[order[split]].At) <= hy) {
 		split++
 	}
 	limit := math.Min(blockLo, area.Y+area.H+lh/2)

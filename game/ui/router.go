@@ -37,7 +37,7 @@ type Router struct {
 }
 
 // Route appends to dst the actions that events mean on the controls of the last frame. It allocates nothing when dst
-// has room. Events with positions that are not numbers are dropped; such a release counts as a cancel.
+// has room. Events with positions that no screen has are dropped; such a release counts as a cancel.
 func (r *Router) Route(dst []Action, events []Event, controls []Control, now time.Duration) []Action {
 	r.base, r.slideID = len(dst), ""
 	top := topLayer(controls)
@@ -120,6 +120,17 @@ func (r *Router) Cancel(dst []Action) []Action {
 	return dst
 }
 
+// escape cancels the drags under way, as Escape does; it reports whether there were any.
+func (r *Router) escape(dst []Action, at time.Duration) ([]Action, bool) {
+	n := len(dst)
+	for i := range r.pointers {
+		if p := &r.pointers[i]; p.state == dragging {
+			dst = p.cancel(dst, at)
+		}
+	}
+	return dst, len(dst) > n
+}
+
 // find is the control with that ID, nil if there is none.
 func find(controls []Control, id string) *Control {
 	if id == "" {
@@ -143,6 +154,9 @@ func topLayer(controls []Control) int {
 	}
 	return top
 }
+
+// placed reports whether a position, or a way, is one that a screen can have.
+func placed(x, y float64) bool { return math.Abs(x) < 1e7 && math.Abs(y) < 1e7 }
 
 func finite(vs ...float64) bool {
 	for _, v := range vs {

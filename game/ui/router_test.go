@@ -1,6 +1,7 @@
 package ui
 
 import (
+	"math"
 	"testing"
 	"time"
 
@@ -91,6 +92,10 @@ func TestGestures(t *testing.T) {
 		{"a second finger on the same handle means nothing", []Event{down(1, 500, 100, 0), down(2, 502, 102, 0), move(1, 520, 100, 0), move(2, 560, 102, 0), up(2, 560, 102, 0), up(1, 520, 100, 0)},
 			"start:handle/mass end:handle/mass"},
 		{"a cancelled drag says so", []Event{down(1, 500, 100, 0), move(1, 520, 100, 0), {Kind: PointerCancel, Pointer: 1}, move(1, 530, 100, 0), up(1, 530, 100, 0)},
+			"start:handle/mass cancel:handle/mass"},
+		{"Escape cancels a drag", []Event{down(1, 500, 100, 0), move(1, 520, 100, 0), key(KeyEscape), move(1, 530, 100, 0), up(1, 530, 100, 0), key(KeyEscape)},
+			"start:handle/mass cancel:handle/mass press:handle/mass"},
+		{"a release at no place cancels", []Event{down(1, 500, 100, 0), move(1, 520, 100, 0), up(1, math.NaN(), 100, 0)},
 			"start:handle/mass cancel:handle/mass"},
 		{"a cancelled press is nothing", []Event{down(1, 430, 130, 0), {Kind: PointerCancel, Pointer: 1}}, ""},
 		{"a finger whose release was lost begins anew", []Event{down(1, 500, 100, 0), move(1, 530, 100, 0), down(1, 430, 130, 0), up(1, 430, 130, 0)},
@@ -199,6 +204,22 @@ func TestModalLayer(t *testing.T) {
 	got = r.Route(nil, []Event{down(1, 430, 130, 100*ms), up(1, 430, 130, 120*ms)}, board(), time.Second)
 	if brief(got, false) != "" {
 		t.Errorf("fell through: %q", brief(got, false))
+	}
+	// Nor does a third tap after the double tap that opened a layer.
+	var again Router
+	twice := []Event{down(1, 500, 100, 0), up(1, 500, 100, 0), down(1, 500, 100, 90*ms), up(1, 500, 100, 99*ms)}
+	if got := brief(again.Route(nil, twice, board(), 0), false); got != "tap:handle/mass tap:handle/mass double:handle/mass" {
+		t.Errorf("%q", got)
+	}
+	seven := ctl("key/7", RoleButton, 470, 70, 60, 60)
+	seven.Modal = 1
+	third := []Event{down(1, 500, 100, 180*ms), up(1, 500, 100, 190*ms)}
+	if got := brief(again.Route(nil, third, append(board(), seven), 0), false); got != "" {
+		t.Errorf("a third tap fell on the layer: %q", got)
+	}
+	third[0].Time, third[1].Time = 700*ms, 710*ms
+	if got := brief(again.Route(nil, third, append(board(), seven), 0), false); got != "tap:key/7" {
+		t.Errorf("a later tap on the layer: %q", got)
 	}
 	if r.Focus == "ok" {
 		t.Error("the focus stayed in a layer that closed")
