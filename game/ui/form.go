@@ -41,6 +41,7 @@ type Form struct {
 	reveal string
 	unit   float64 // width of the widest unit: all values end above each other
 	places []fieldPlace
+	plain  []float64 // heights of the sections without help and refusals
 }
 
 // fieldPlace is where a row lies in the content.
@@ -107,11 +108,15 @@ func (fm *Form) place(f *Frame, width float64, sections []FormSection) float64 {
 		w = width - 2*12
 	}
 	left := (width - w*float64(columns) - formGap*float64(columns-1)) / 2
-	limit := columnLimit(f, sections, w, fm.unit, columns)
+	fm.plain = fm.plain[:0]
+	for i := range sections {
+		fm.plain = append(fm.plain, sections[i].height(f, w, fm.unit))
+	}
+	limit := columnLimit(fm.plain, columns)
 	column, plain, y, height := 0, 0.0, 0.0, 0.0
 	for i := range sections {
 		s := &sections[i]
-		h := s.height(f, w, fm.unit, false)
+		h := fm.plain[i]
 		if plain > 0 && plain+h > limit+0.5 && column < columns-1 {
 			column, plain, y = column+1, 0, 0
 		}
@@ -134,19 +139,16 @@ func (fm *Form) place(f *Frame, width float64, sections []FormSection) float64 {
 	return height + 24
 }
 
-// columnLimit is the least height of a column with which the sections, kept in order, take no more than so many columns.
-func columnLimit(f *Frame, sections []FormSection, w, unit float64, columns int) float64 {
-	total, most := 0.0, 0.0
-	for i := range sections {
-		h := sections[i].height(f, w, unit, false)
-		total += h
-		most = math.Max(most, h)
+// columnLimit is the least height of a column with which sections of these heights, kept in order, take no more than so
+// many columns.
+func columnLimit(heights []float64, columns int) float64 {
+	lo, hi := 0.0, 0.0
+	for _, h := range heights {
+		lo, hi = math.Max(lo, h), hi+h
 	}
-	lo, hi := most, total
 	for k := 0; k < 24 && hi-lo > 1; k++ {
 		mid, n, at := (lo+hi)/2, 1, 0.0
-		for i := range sections {
-			h := sections[i].height(f, w, unit, false)
+		for _, h := range heights {
 			if at > 0 && at+h > mid {
 				n, at = n+1, 0
 			}
@@ -161,10 +163,11 @@ func columnLimit(f *Frame, sections []FormSection, w, unit float64, columns int)
 	return hi
 }
 
-func (s *FormSection) height(f *Frame, w, unit float64, open bool) float64 {
+// height is the height of a section without help and refusals.
+func (s *FormSection) height(f *Frame, w, unit float64) float64 {
 	h := s.titleHeight(f, w) + 12
 	for i := range s.Fields {
-		h += s.Fields[i].height(f, w, unit, open)
+		h += s.Fields[i].height(f, w, unit, false)
 	}
 	if len(s.Row) > 0 {
 		h += rowHeight(s.Row, w)

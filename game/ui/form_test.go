@@ -121,3 +121,17 @@ func TestDialogFocusIsHarmless(t *testing.T) {
 		t.Errorf("%q", brief(got, false))
 	}
 }
+
+func BenchmarkForm(b *testing.B) {
+	var fm Form
+	var s scene.Scene
+	var f Frame
+	t := Day()
+	sections := append(append(formSections(), formSections()...), formSections()...)
+	b.ReportAllocs()
+	for b.Loop() {
+		s.Reset(1280, 800, 1, t.Background)
+		f.Begin(&s, t, nil)
+		fm.Draw(&f, scene.Rect{W: 1280, H: 800}, "form", "Form", sections)
+	}
+}
