@@ -4,6 +4,8 @@ package game
 
 import (
 	"fmt"
+	"image"
+	"image/color"
 	"runtime/debug"
 
 	"github.com/hajimehoshi/ebiten/v2"
@@ -25,7 +27,6 @@ type Surface struct {
 	failed  func(why string)
 	painter painter
 	shown   *scene.Scene // what is on the screen, nil before the first
-	canvas  *ebiten.Image
 	dirty   bool
 	dead    bool
 
@@ -64,15 +65,28 @@ func (s *Surface) Update() (err error) {
 	return nil
 }
 
-// Draw paints the scene if it is new or the screen is.
-func (s *Surface) Draw(screen *ebiten.Image) {
+// Draw only tells ebiten that there is something to present: it leaves out frames whose offscreen image was not
+// touched. The scene goes onto the screen itself, in DrawFinalScreen, which spares a copy of the whole screen.
+func (s *Surface) Draw(offscreen *ebiten.Image) {
+	if s.dirty {
+		offscreen.SubImage(image.Rect(0, 0, 1, 1)).(*ebiten.Image).Fill(color.White)
+	}
+}
+
+// DrawFinalScreen paints the scene. The screen keeps nothing from one frame to the next.
+func (s *Surface) DrawFinalScreen(screen ebiten.FinalScreen, _ *ebiten.Image, _ ebiten.GeoM) {
 	defer s.guard()
-	if s.shown == nil || !s.dirty && s.canvas == screen {
+	target, ok := screen.(*ebiten.Image)
+	if !ok || s.shown == nil {
 		return
 	}
-	s.canvas, s.dirty = screen, false
-	s.painter.paint(screen, s.shown)
-	if s.AfterDraw != nil {
+	if s.dirty {
+		s.painter.build(s.shown)
+	}
+	s.painter.paint(target)
+	fresh := s.dirty
+	s.dirty = false
+	if fresh && s.AfterDraw != nil {
 		s.AfterDraw()
 	}
 }
