@@ -71,7 +71,7 @@ func (f *Frame) Box(r scene.Rect) image.Rectangle {
 
 func (f *Frame) edges(at, size float64) (lo, hi int, ok bool) {
 	a, b := at*f.Scale, (at+size)*f.Scale
-	if !(size > 0) || !finite(a) || !(b-a >= 0.25) {
+	if !(size > 0) || !finite(a) || !finite(b) || !(b-a >= 0.25) {
 		return 0, 0, false
 	}
 	lo, hi = int(math.Round(clamp(a))), int(math.Round(clamp(b)))

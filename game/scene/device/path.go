@@ -16,8 +16,9 @@ type Part struct {
 // maxDashed bounds the points of a dashed stroke; what would follow is left out.
 const maxDashed = 1 << 15
 
-// tiny is a distance, device pixels, below which two points are one.
-const tiny = 1.0 / 256
+// tiny is a distance, device pixels, below which two points are one: too small to be seen, and curves with more points
+// than that cost for nothing.
+const tiny = 1.0 / 16
 
 // Polygon is the outline of a fill; nil when fewer than three points are left. Points that are no numbers are left
 // out, and far ones brought to the limit. The result is valid until the next call on f.
@@ -135,24 +136,38 @@ func square(p []scene.Point, closed bool) bool {
 
 // snapped puts a square path where a line of this whole width covers whole pixels.
 func (f *Frame) snapped(p []scene.Point, width float64, closed bool) {
+	first, last := 1, len(p)-2 // the nearest other places of the two ends
+	for first < len(p) && p[first] == p[0] {
+		first++
+	}
+	if first == len(p) {
+		return // one place only
+	}
+	for p[last] == p[len(p)-1] {
+		last--
+	}
 	for i, q := range p {
-		d := f.device(q)
-		x, y := centre(d.X, width), centre(d.Y, width)
-		// The ends of an open line stop on a pixel's edge along the line.
-		if !closed && (i == 0 || i == len(p)-1) {
-			r := p[max(i-1, 0)]
-			if i == 0 {
-				r = p[1]
-			}
-			if r.Y == q.Y {
-				x = math.Round(d.X)
-			} else {
-				y = math.Round(d.Y)
-			}
+		if i > 0 && i < first || i > last && i < len(p)-1 {
+			continue // still at an end
 		}
-		f.add(scene.Point{X: x, Y: y})
+		d := f.device(q)
+		c := scene.Point{X: centre(d.X, width), Y: centre(d.Y, width)}
+		// The ends of an open line stop on a pixel's edge along the line.
+		if !closed && i == 0 {
+			c = blunt(d, c, q.Y == p[first].Y)
+		} else if !closed && i == len(p)-1 {
+			c = blunt(d, c, q.Y == p[last].Y)
+		}
+		f.add(c)
 	}
 	f.end(0, closed)
+}
+
+func blunt(d, c scene.Point, level bool) scene.Point {
+	if level {
+		return scene.Point{X: math.Round(d.X), Y: c.Y}
+	}
+	return scene.Point{X: c.X, Y: math.Round(d.Y)}
 }
 
 func centre(v, width float64) float64 { return math.Round(v-width/2) + width/2 }
@@ -268,7 +283,7 @@ func (f *Frame) dashed(dash, gap float64) {
 				if on {
 					f.add(p)
 				}
-				if left > tiny {
+				if left > 1e-6 {
 					continue
 				}
 				if on {

@@ -5,9 +5,7 @@ package glyph
 
 import (
 	"image"
-	"math"
 	"slices"
-	"unicode/utf8"
 
 	"levelspan/assets/font"
 	"levelspan/game/scene"
@@ -112,23 +110,12 @@ func New(scale float64) *Atlas {
 	return a
 }
 
-// Draw blends text into dst with its baseline at y, device pixels, as the back ends do: for tests and tools.
-func (a *Atlas) Draw(dst *image.Alpha, style scene.Style, x, y int, text string) {
-	pen := float64(x)
-	for len(text) > 0 {
-		r, n := utf8.DecodeRuneInString(text)
-		text = text[n:]
-		g, adv := a.Lookup(style, r)
-		px, py := int(math.Round(pen))+int(g.Left), y+int(g.Top)
-		for j := range int(g.H) {
-			for i := range int(g.W) {
-				p := image.Pt(px+i, py+j)
-				if p.In(dst.Rect) {
-					k := dst.PixOffset(p.X, p.Y)
-					dst.Pix[k] = max(dst.Pix[k], a.Image.AlphaAt(int(g.X)+i, int(g.Y)+j).A)
-				}
-			}
-		}
-		pen += adv
+// RGBA is the atlas as premultiplied white, for a texture of four channels.
+func (a *Atlas) RGBA() *image.RGBA {
+	m := image.NewRGBA(a.Image.Rect)
+	for i, v := range a.Image.Pix {
+		p := m.Pix[i*4 : i*4+4 : i*4+4]
+		p[0], p[1], p[2], p[3] = v, v, v, v
 	}
+	return m
 }

@@ -83,7 +83,8 @@ func (m *Mesh) fringe(base, n int) {
 
 // disc is a circle. One smaller than a pixel keeps its area: a cone, lower than full coverage.
 func (m *Mesh) disc(c scene.Point, r float64) {
-	if !m.enter(image.Rect(int(c.X-r-2), int(c.Y-r-2), int(c.X+r+3), int(c.Y+r+3))) {
+	m.ring = append(m.ring[:0], c)
+	if !m.enter(device.Extent(m.ring, r+0.5)) {
 		return
 	}
 	inner, cover := r-0.5, 1.0

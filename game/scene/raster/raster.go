@@ -134,7 +134,8 @@ func (p *Painter) band(s *scene.Scene, op *scene.Op) {
 		if len(u) == 0 {
 			return
 		}
-		box := device.Extent(u, 0).Union(device.Extent(l, 0)).Intersect(p.frame.Clip)
+		// With a margin, since an edge may be flat, and a union leaves out what is empty.
+		box := device.Extent(u, 1).Union(device.Extent(l, 1)).Intersect(p.frame.Clip)
 		if box.Empty() {
 			continue
 		}
