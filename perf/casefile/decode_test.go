@@ -395,3 +395,18 @@ func BenchmarkStandardUnmarshal(b *testing.B) { // the baseline: encoding/json r
 		}
 	}
 }
+
+// A file of as many faulty runs as may be there costs no more than reading it: the list of faults is bounded.
+func TestManyFaultsAreBounded(t *testing.T) {
+	run := `{"kind":"level","ias_mps":-1,"mass_kg":"x","rate_mps":99},`
+	s := strings.TrimSuffix(smallest, "}") + `,"runs":[` + strings.TrimSuffix(strings.Repeat(run, maxRuns), ",") + `]}`
+	_, _, err := Parse([]byte(s))
+	if n := len(faultsOf(err)); n != maxFaults || !strings.HasSuffix(err.Error(), "further faults are not listed") {
+		t.Errorf("%d faults", n)
+	}
+	s = strings.Replace(s, strings.Repeat(run, 3), strings.Repeat(run, 4), 1)
+	_, _, err = Parse([]byte(s))
+	if got := faultsOf(err); len(got) != 1 || got[0] != "runs" {
+		t.Errorf("one run too many: %q", got)
+	}
+}

@@ -5,30 +5,43 @@ import "strconv"
 // Validate reports every fault of c as Faults, or nil: each field against its range, and the fields against each other.
 func (c *Case) Validate() error {
 	var faults Faults
-	checkObject(caseObject, c, "", &faults)
+	checkObject(caseObject, c, "", false, &faults)
+	if len(faults) > 0 {
+		faults = nil
+		checkObject(caseObject, c, "", true, &faults)
+	}
 	c.check(&faults, true)
 	return faults.orNil()
 }
 
-// checkObject holds the leaves of an object, and of those below it, against the table.
-func checkObject(o *object, p any, path string, faults *Faults) {
+// checkObject holds the leaves of an object, and of those below it, against the table. Without spell the paths of its
+// faults are empty; so that a sound case, which is checked at every step of a drag, costs no text.
+func checkObject(o *object, p any, path string, spell bool, faults *Faults) {
 	kind := o.kindOf(p)
 	for i := range o.members {
 		m := &o.members[i]
+		at := ""
+		if spell {
+			at = joinPath(path, m.key)
+		}
 		switch m.shape {
 		case shapeLeaf:
-			m.field.check(m.at(p), joinPath(path, m.key), kind, faults)
+			m.field.check(m.at(p), at, kind, faults)
 		case shapePart, shapeMaybe:
 			if q := m.at(p); q != nil {
-				checkObject(m.object, q, joinPath(path, m.key), faults)
+				checkObject(m.object, q, at, spell, faults)
 			}
 		case shapeList:
 			n := m.count(p)
 			if n < m.least(kind) || n > m.max {
-				faults.add(joinPath(path, m.key), strconv.Itoa(n)+" entries", m.allowedCount(kind))
+				faults.add(at, strconv.Itoa(n)+" entries", m.allowedCount(kind))
 			}
 			for j := 0; j < n && n <= m.max; j++ {
-				checkObject(m.object, m.item(p, j), joinPath(path, m.key)+"["+strconv.Itoa(j)+"]", faults)
+				row := at
+				if spell {
+					row += "[" + strconv.Itoa(j) + "]"
+				}
+				checkObject(m.object, m.item(p, j), row, spell, faults)
 			}
 		}
 	}
@@ -137,29 +150,31 @@ func (p *Propeller) check(faults *Faults) {
 
 func (c *Case) checkCalibration(i int, faults *Faults) {
 	k := &c.Aeroplane.Calibration[i]
-	path := "aeroplane.calibration[" + strconv.Itoa(i) + "]"
+	path := func(key string) string {
+		return "aeroplane.calibration[" + strconv.Itoa(i) + "]." + key
+	}
 	if c.configuration(k.Configuration) < 0 {
-		faults.add(path+".configuration", quote(k.Configuration), "the name of one of the configurations")
+		faults.add(path("configuration"), quote(k.Configuration), "the name of one of the configurations")
 	}
 	for j := 0; j < i; j++ {
 		if c.Aeroplane.Calibration[j].Configuration == k.Configuration {
-			faults.add(path+".configuration", quote(k.Configuration), "a configuration that no other calibration has")
+			faults.add(path("configuration"), quote(k.Configuration), "a configuration that no other calibration has")
 		}
 	}
 	for j := range k.Points {
 		cas := k.Points[j].IASMps + k.Points[j].CASMinusIASMps
-		row := path + ".points[" + strconv.Itoa(j) + "]"
+		row := func(key string) string { return path("points[" + strconv.Itoa(j) + "]." + key) }
 		if !(cas > 0) {
-			faults.add(row+".cas_minus_ias_mps", formatNumber(k.Points[j].CASMinusIASMps), "a calibrated airspeed above 0")
+			faults.add(row("cas_minus_ias_mps"), formatNumber(k.Points[j].CASMinusIASMps), "a calibrated airspeed above 0")
 		}
 		if j == 0 {
 			continue
 		}
 		q := &k.Points[j-1]
 		if !(k.Points[j].IASMps > q.IASMps) {
-			faults.add(row+".ias_mps", formatNumber(k.Points[j].IASMps), "more than the row before, "+formatNumber(q.IASMps))
+			faults.add(row("ias_mps"), formatNumber(k.Points[j].IASMps), "more than the row before, "+formatNumber(q.IASMps))
 		} else if !(cas > q.IASMps+q.CASMinusIASMps) {
-			faults.add(row+".cas_minus_ias_mps", formatNumber(k.Points[j].CASMinusIASMps), "a calibrated airspeed above that of the row before")
+			faults.add(row("cas_minus_ias_mps"), formatNumber(k.Points[j].CASMinusIASMps), "a calibrated airspeed above that of the row before")
 		}
 	}
 }
