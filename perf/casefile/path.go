@@ -119,7 +119,7 @@ func (c *Case) Number(path string) (value float64, set bool) {
 
 // SetNumber puts a number, in the file's unit, at a path. It refuses with a *Fault, and changes nothing, what is out of
 // the field's range and what would make the case unphysical together with its other numbers. An optional part
-// (the fuel, the battery) is made when its first number is set.
+// (the fuel, the battery) is made when the number that it must have is set.
 func (c *Case) SetNumber(path string, value float64) error {
 	p, ok := find(c, path)
 	if !ok {
@@ -135,7 +135,12 @@ func (c *Case) SetNumber(path string, value float64) error {
 	value += 0 // no -0
 	if p.parent == nil {
 		p.parent = p.maybe.create(p.above)
-		return c.change(path, func() { *p.m.at(p.parent).(*float64) = value }, func() { p.maybe.remove(p.above) })
+		v, ok := p.m.at(p.parent).(*float64)
+		if !ok || !f.Required {
+			p.maybe.remove(p.above)
+			return &Fault{path, formatNumber(value), "nothing while " + p.maybe.key + " itself is not given"}
+		}
+		return c.change(path, func() { *v = value }, func() { p.maybe.remove(p.above) })
 	}
 	switch v := p.m.at(p.parent).(type) {
 	case *float64:

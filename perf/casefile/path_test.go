@@ -163,6 +163,9 @@ func TestClearNumber(t *testing.T) {
 	if err := c.ClearNumber("aeroplane.fuel.usable_kg"); err != nil || c.Aeroplane.Fuel != nil {
 		t.Errorf("fuel: %v, %v", err, c.Aeroplane.Fuel)
 	}
+	if err := c.SetNumber("aeroplane.fuel.density_kg_per_l", 0.72); err == nil || c.Aeroplane.Fuel != nil {
+		t.Errorf("a density without fuel: %v, %v", err, c.Aeroplane.Fuel)
+	}
 	if err := c.SetNumber("aeroplane.fuel.usable_kg", 60); err != nil || c.Aeroplane.Fuel == nil || c.Aeroplane.Fuel.UsableKg != 60 {
 		t.Errorf("fuel again: %v", err)
 	}

@@ -107,7 +107,7 @@ func (e Entry) Parse(typed string) (file float64, ok bool) {
 		}
 	}
 	x, err := strconv.ParseFloat(s, 64)
-	if err != nil {
+	if err != nil || math.IsInf(e.ToFile(x), 0) {
 		return 0, false
 	}
 	return e.ToFile(x), true

@@ -126,7 +126,83 @@ func TestEntryParse(t *testing.T) {
 			t.Errorf("%q is read as %v", typed, got)
 		}
 	}
+	power, _ := casefile.FieldOf("aeroplane.engine.rated_power_w")
+	if got, ok := FromDisplay(casefile.Display{}, 720).Entry(power).Parse("1e308"); ok {
+		t.Errorf("1e308 kW is read as %v", got)
+	}
 	if got := ascii(e.Text(6 * perf.Knot)); got != "6 kt" {
 		t.Errorf("text %q", got)
 	}
+}
+
+func TestEntryInTheUnitsOfTheTrade(t *testing.T) {
+	imperial := FromDisplay(casefile.Display{Speed: "kt", Altitude: "ft", Mass: "lb", Power: "hp", Fuel: "US gal", Length: "ft"}, 720)
+	metric := FromDisplay(casefile.Display{Speed: "km/h", Altitude: "m", Fuel: "L"}, 720)
+	// Worked by hand: 16.5 m² is 177.605 ft², 74600 W is 100.040 hp, 0.3 kg/kWh is 0.493196 lb/hp/h, 57.6 kg of petrol are 80 L or 21.1338 US gal.
+	for _, x := range []struct {
+		units Units
+		path  string
+		file  float64
+		text  string
+	}{
+		{imperial, "aeroplane.wing_area_m2", 16.5, "177.605 ft²"}, {metric, "aeroplane.wing_area_m2", 16.5, "16.5 m²"}, {imperial, "aeroplane.wing_span_m", 10.8, "35.4331 ft"},
+		{imperial, "aeroplane.engine.rated_power_w", 74600, "100.04 hp"}, {metric, "aeroplane.engine.rated_power_w", 74600, "74.6 kW"},
+		{imperial, "aeroplane.engine.specific_consumption_kg_per_kwh", 0.3, "0.493196 lb/hp/h"}, {metric, "aeroplane.engine.specific_consumption_kg_per_kwh", 0.3, "0.3 kg/kWh"},
+		{imperial, "aeroplane.fuel.usable_kg", 57.6, "21.1338 US gal"}, {metric, "aeroplane.fuel.usable_kg", 57.6, "80 L"},
+		{imperial, "today.pressure_altitude_m", 1200, "3937.01 ft"}, {metric, "today.headwind_mps", 3, "10.8 km/h"}, {imperial, "runs[0].rate_mps", 2, "393.701 ft/min"},
+		{metric, "runs[0].rate_mps", 2, "2 m/s"}, {imperial, "aeroplane.polar.cd0", 0.034, "0.034"}, {imperial, "today.outside_air_temperature_c", -5.5, "-5.5 °C"},
+		{imperial, "aeroplane.engine.rated_rpm", 2750, "2750 rpm"}, {metric, "today.reserve_min", 30, "30 min"}, {metric, "today.bank_deg", 0, "0°"},
+	} {
+		f, ok := casefile.FieldOf(x.path)
+		if !ok {
+			t.Fatal(x.path)
+		}
+		if got := ascii(x.units.Entry(f).Text(x.file)); got != x.text {
+			t.Errorf("%s: %q, want %q", x.path, got, x.text)
+		}
+	}
+}
+
+// A range is shown rounded to its inside, never wider than it is.
+func TestAllowedIsRoundedInward(t *testing.T) {
+	f, _ := casefile.FieldOf("aeroplane.wing_area_m2")
+	e := FromDisplay(casefile.Display{Length: "ft"}, 720).Entry(f)
+	if got := ascii(e.Allowed()); got != "5.382 to 10760 ft²" { // 0.5 m² is 5.38196 ft², 1000 m² are 10763.9 ft²
+		t.Errorf("allowed %q", got)
+	}
+	f, _ = casefile.FieldOf("today.outside_air_temperature_c")
+	if got := ascii(FromDisplay(casefile.Display{}, 720).Entry(f).Allowed()); got != "-100 to 70 °C" {
+		t.Errorf("allowed %q", got)
+	}
+	for _, x := range []struct{ value, toward, want float64 }{{0, 1, 0}, {5.38196, 1, 5.382}, {5.38196, -1, 5.381}, {-5.38196, 1, -5.381}, {-5.38196, -1, -5.382}, {800, 1, 800}, {0.05, -1, 0.05}} {
+		if got := inward(x.value, x.toward); math.Abs(got-x.want) > 1e-12 {
+			t.Errorf("inward(%v, %v) = %v, want %v", x.value, x.toward, got, x.want)
+		}
+	}
+}
+
+func TestFiguresThatAreNotFinite(t *testing.T) {
+	f, _ := casefile.FieldOf("today.mass_kg")
+	e := FromDisplay(casefile.Display{}, 720).Entry(f)
+	if e.Format(math.NaN()) != None || e.Format(math.Inf(1)) != None || e.Format(math.Copysign(0, -1)) != "0" {
+		t.Errorf("%q %q %q", e.Format(math.NaN()), e.Format(math.Inf(1)), e.Format(math.Copysign(0, -1)))
+	}
+	if got := (Figure{"12", ""}).String(); got != "12" {
+		t.Errorf("no unit: %q", got)
+	}
+}
+
+func FuzzEntryParse(f *testing.F) {
+	f.Add("12.5")
+	f.Add("-1e400")
+	f.Add("−5,2")
+	f.Add("+.e")
+	field, _ := casefile.FieldOf("aeroplane.empty_mass_kg")
+	e := FromDisplay(casefile.Display{Mass: "lb"}, 720).Entry(field)
+	f.Fuzz(func(t *testing.T, typed string) {
+		x, ok := e.Parse(typed)
+		if ok && (math.IsNaN(x) || math.IsInf(x, 0)) || !ok && x != 0 {
+			t.Errorf("%q: %v, %v", typed, x, ok)
+		}
+	})
 }
