@@ -101,6 +101,7 @@ func New(host Host, caseFile []byte) *App {
 	if caseFile != nil {
 		a.open(Opened{Data: caseFile})
 		a.doc.past = nil
+		a.view.notice, a.view.status = "", ""
 	}
 	a.units = a.unitsNow()
 	a.view.menu = ui.Menu{ID: "menu-list", Label: "Menu"}

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"levelspan/game/scene"
 	"levelspan/game/ui"
 	"levelspan/perf/casefile/figure"
 )
@@ -11,6 +12,21 @@ var (
 )
 
 func (a *App) unitsNow() figure.Units { return figure.Of(a.doc.current) }
+
+// toEdges is a ground stretched over the insets that it touches, to the edges of the window.
+func (a *App) toEdges(r scene.Rect) scene.Rect {
+	s, w := a.layout.safe, a.layout.window
+	if r.X <= s.X {
+		r.W, r.X = r.W+r.X, 0
+	}
+	if r.X+r.W >= s.X+s.W-0.5 {
+		r.W = w.W - r.X
+	}
+	if r.Y+r.H >= s.Y+s.H-0.5 {
+		r.H = w.H - r.Y
+	}
+	return r
+}
 
 // draw draws the whole picture anew.
 func (a *App) draw() {

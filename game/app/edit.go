@@ -3,6 +3,7 @@ package app
 import (
 	"errors"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -62,28 +63,34 @@ func fieldTemperature(c *casefile.Case) float64 {
 // putChoice sets one of a few, and what must come with it: a kind of engine or propeller that was never described starts
 // with the field table's typical figures; those of the other kinds stay for the way back.
 func putChoice(c *casefile.Case, fields fieldTable, path, value string) error {
-	if err := c.SetText(path, value); err != nil {
-		return err
+	f := fields.of(path)
+	if f == nil || f.Kind == casefile.KindChoice && !slices.Contains(f.Choices, value) {
+		return errNothingThere
 	}
+	a := &c.Aeroplane
 	switch path {
 	case "today.air_from":
+		c.Today.AirFrom = value
 		return enterAirBy(c, value)
 	case "aeroplane.engine.kind":
+		a.Engine.Kind = value
 		fillTypical(c, fields, "aeroplane.engine.", value)
-		a := &c.Aeroplane
 		if value == casefile.Electric && a.Battery == nil {
 			a.Battery = &casefile.Battery{UsableKWh: 40}
 		}
+		return nil
 	case "aeroplane.propeller.kind":
+		p := &a.Propeller
+		p.Kind = value
 		fillTypical(c, fields, "aeroplane.propeller.", value)
-		p := &c.Aeroplane.Propeller
 		if value == casefile.Table && len(p.AdvanceRatio) < 3 {
-			p.AdvanceRatio = []float64{0.2, 0.5, 0.8}
-			p.ThrustCoefficient = []float64{0.09, 0.06, 0.02}
-			p.PowerCoefficient = []float64{0.045, 0.04, 0.025}
+			p.AdvanceRatio = []float64{0.2, 0.5, 0.8, 1}
+			p.ThrustCoefficient = []float64{0.09, 0.065, 0.025, -0.01}
+			p.PowerCoefficient = []float64{0.045, 0.042, 0.028, 0.012}
 		}
+		return nil
 	}
-	return nil
+	return c.SetText(path, value)
 }
 
 // enterAirBy changes the way of entry; the air stays, except that a density altitude alone means a dry standard day.
@@ -108,15 +115,29 @@ func enterAirBy(c *casefile.Case, way string) error {
 	return nil
 }
 
+// fillTypical gives the numbers that a kind needs and that are not physical a class average to begin with.
 func fillTypical(c *casefile.Case, fields fieldTable, prefix, kind string) {
-	for path, f := range fields {
-		if !strings.HasPrefix(path, prefix) || strings.Contains(path, "[]") || f.Kind != casefile.KindNumber || !f.Applies(kind) {
+	e, p := &c.Aeroplane.Engine, &c.Aeroplane.Propeller
+	for path, at := range map[string]*float64{
+		"aeroplane.engine.rated_power_w": &e.RatedPowerW, "aeroplane.engine.rated_rpm": &e.RatedRPM,
+		"aeroplane.engine.lapse_exponent": &e.LapseExponent, "aeroplane.engine.specific_consumption_kg_per_kwh": &e.SpecificConsumptionKgPerKWh,
+		"aeroplane.propeller.efficiency": &p.Efficiency, "aeroplane.propeller.diameter_m": &p.DiameterM,
+		"aeroplane.propeller.blade_efficiency": &p.BladeEfficiency, "aeroplane.propeller.polar_slope": &p.PolarSlope,
+		"aeroplane.propeller.polar_intercept":          &p.PolarIntercept,
+		"aeroplane.propeller.power_coefficient_static": &p.PowerCoefficientStatic,
+		"aeroplane.propeller.power_coefficient_slope":  &p.PowerCoefficientSlope,
+	} {
+		f := fields.of(path)
+		if f == nil || !strings.HasPrefix(path, prefix) || !f.Applies(kind) {
 			continue
 		}
-		if v, set := c.Number(path); set && v != 0 && v >= f.Min && v <= f.Max || f.Typical == 0 {
-			continue
+		typical := f.Typical
+		if typical == 0 {
+			typical = f.Default
 		}
-		_ = c.SetNumber(path, f.Typical) // the table's own figure
+		if *at == 0 && typical != 0 || *at < f.Min || *at > f.Max {
+			*at = typical
+		}
 	}
 }
 
@@ -258,10 +279,7 @@ func rename(c *casefile.Case, index int, name string) error {
 			return errors.New("another configuration has this name")
 		}
 	}
-	if err := c.SetText(indexed("aeroplane.configurations", index)+".name", name); err != nil {
-		return err
-	}
-	name = configs[index].Name
+	configs[index].Name = name // whether it is a name at all is for Validate to say
 	if c.Today.Configuration == old {
 		c.Today.Configuration = name
 	}

@@ -23,7 +23,7 @@ func (a *App) drawHeader(f *ui.Frame) {
 	case l.tabs.Y != l.header.Y:
 		ui.TabBar(f, l.tabs, tabs, true)
 	case l.format == phone:
-		ui.TabBar(f, bar, tabs, true)
+		ui.TabBar(f, ui.Trim(bar, 0, -8, 0, -l.margin), tabs, true) // the name has no room
 		return
 	default:
 		room := 0.0

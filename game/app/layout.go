@@ -92,6 +92,9 @@ func (l *layout) wide(r scene.Rect) {
 // tall places the chart above the panel.
 func (l *layout) tall(r scene.Rect) {
 	l.columns = 2
+	if l.safe.W < 360 {
+		l.columns = 1
+	}
 	need := 456.0 // panel with everything in it, two columns
 	chart := r.H - need - 60
 	if l.format == phone {

@@ -43,6 +43,10 @@ func (a *App) openPad(path, target string) {
 	}
 	c := ui.KeypadConfig{ID: target, Title: title, Unit: m.unit, Now: now, Range: m.allowed(), Min: m.Min * m.k, Max: m.Max * m.k,
 		Decimals: 6, Signed: m.Min < 0}
+	if path == pathMass {
+		a := &a.doc.current.Aeroplane
+		c.Range += "; empty " + m.text(a.EmptyMassKg) + ", maximum " + m.text(a.MaximumMassKg)
+	}
 	if path == pathSetting {
 		c.Range += "; below 35 counts as inHg"
 	}

@@ -22,7 +22,7 @@ const (
 // drawPanel draws the limits in order of speed, ceilings, turn and allowances, and the advisory line.
 func (a *App) drawPanel(f *ui.Frame) {
 	t, r := f.Theme, a.layout.panel
-	f.Scene.FillRect(r, 0, t.Panel)
+	f.Scene.FillRect(a.toEdges(r), 0, t.Panel)
 	if a.layout.format == landscape {
 		f.Scene.Line(r.X, r.Y, r.X, r.Y+r.H, 1, t.Line)
 	} else {
@@ -121,14 +121,23 @@ func (a *App) drawLimits(f *ui.Frame, r scene.Rect) {
 
 // drawLimit draws one row: name, second figure, symbol, value.
 func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
-	t := f.Theme
 	selected := a.view.marked && a.view.selected == row.key
 	id := "limit/" + row.key.String()
 	touch := scene.Rect{X: r.X - 8, Y: r.Y, W: r.W + 16, H: r.H}
+	if f.Seen(r) {
+		a.drawLimitText(f, r, touch, row, selected, f.Pressed(id))
+	}
+	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.second,
+		Value: inKind(&a.solved.answer.Limits[row.key], a.speedKind()), Bounds: touch, Hit: touch, Selected: selected})
+}
+
+// drawLimitText draws what a row says.
+func (a *App) drawLimitText(f *ui.Frame, r, touch scene.Rect, row *limitRow, selected, pressed bool) {
+	t := f.Theme
 	switch {
 	case selected:
 		f.Scene.FillRect(ui.Trim(touch, 1, 0, 1, 0), 6, t.Chosen)
-	case f.Pressed(id):
+	case pressed:
 		f.Scene.FillRect(ui.Trim(touch, 1, 0, 1, 0), 6, t.KeyDown)
 	}
 	f.Scene.Line(r.X, r.Y, r.X+r.W, r.Y, 1, t.Line)
@@ -163,8 +172,6 @@ func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
 	}
 	f.Label(style, scene.Rect{X: words.X, Y: base - 14, W: words.W, H: 16}, scene.Left, row.name, ink)
 	f.Label(scene.Small, scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}, scene.Left, fitting(row.second, inline, words.W), t.Muted)
-	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.second,
-		Value: inKind(&a.solved.answer.Limits[row.key], a.speedKind()), Bounds: touch, Hit: touch, Selected: selected})
 }
 
 // fitting is the longest form of a second figure that fits: with what stands beside the name, without, and without what

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"strings"
 	"testing"
 	"time"
 
@@ -38,8 +39,14 @@ const frame = 16 * time.Millisecond
 
 func newPilot(t *testing.T, w, h float64) *pilot {
 	t.Helper()
+	return newPilotIn(t, Input{Width: w, Height: h})
+}
+
+func newPilotIn(t *testing.T, in Input) *pilot {
+	t.Helper()
+	in.Scale = 1
 	host := &testHost{}
-	p := &pilot{t: t, host: host, app: New(host, nil), in: Input{Width: w, Height: h, Scale: 1}}
+	p := &pilot{t: t, host: host, app: New(host, nil), in: in}
 	if !p.step() {
 		t.Fatal("the first Step drew nothing")
 	}
@@ -115,3 +122,61 @@ func (p *pilot) setSlider(id string, v float64) {
 }
 
 func (p *pilot) key(k ui.Key) { p.event(ui.Event{Kind: ui.KeyDown, Key: k}) }
+
+// doubleTap taps a control twice at once.
+func (p *pilot) doubleTap(id string) {
+	p.t.Helper()
+	p.in.Now += time.Second
+	x, y := middle(p.control(id).Hit)
+	p.tapAt(x, y)
+	p.tapAt(x, y)
+}
+
+// typeIn types a number on the drawn keypad and presses OK.
+func (p *pilot) typeIn(number string) {
+	p.t.Helper()
+	for _, r := range number {
+		switch r {
+		case '.':
+			p.tap("key/point")
+		case '-':
+			p.tap("key/sign")
+		default:
+			p.tap("key/" + string(r))
+		}
+	}
+	p.tap("key/ok")
+}
+
+// down, move and up are one finger's frames.
+func (p *pilot) down(finger int, x, y float64) {
+	p.event(ui.Event{Kind: ui.PointerDown, Pointer: finger, Touch: true, X: x, Y: y})
+}
+
+func (p *pilot) move(finger int, x, y float64) {
+	p.event(ui.Event{Kind: ui.PointerMove, Pointer: finger, Touch: true, X: x, Y: y})
+}
+
+func (p *pilot) up(finger int, x, y float64) {
+	p.event(ui.Event{Kind: ui.PointerUp, Pointer: finger, Touch: true, X: x, Y: y})
+}
+
+// file is the case on the screen as it would be saved.
+func (p *pilot) file() string { return string(p.app.Case().Marshal()) }
+
+// row is a row of the mirror; the test ends where there is none.
+func (p *pilot) row(key string) MirrorRow {
+	p.t.Helper()
+	for _, r := range p.app.Mirror().Rows {
+		if r.Key == key {
+			return r
+		}
+	}
+	p.t.Fatalf("no row %q", key)
+	return MirrorRow{}
+}
+
+// says reports whether any text of the picture contains words.
+func (p *pilot) says(words string) bool {
+	return strings.Contains(strings.ReplaceAll(string(p.app.Scene().Text), "\u00a0", " "), words)
+}

@@ -60,16 +60,25 @@ func (a *App) altitudeRail(t *ui.Theme) ui.Rail {
 		rail.Marks = append(rail.Marks, ui.RailMark{At: shown(u.Altitude, at.DensityAltitude), Text: "field"})
 	}
 	if s := a.solved.answer.Service; s.Applies {
-		rail.Marks = append(rail.Marks, ui.RailMark{At: shown(u.Altitude, s.DensityAltitude), Text: "service", Color: t.Ink})
+		rail.Marks = append(rail.Marks, ui.RailMark{At: math.Min(shown(u.Altitude, s.DensityAltitude), rail.Max),
+			Text: "service" + above(s.DensityAltitude, r.hi), Color: t.Ink})
 	}
 	if s := a.solved.answer.Absolute; s.Applies {
 		at := shown(u.Altitude, s.DensityAltitude)
-		rail.Marks = append(rail.Marks, ui.RailMark{At: at, Text: "absolute", Color: t.Bad})
+		rail.Marks = append(rail.Marks, ui.RailMark{At: math.Min(at, rail.Max), Text: "absolute" + above(s.DensityAltitude, r.hi), Color: t.Bad})
 		rail.Zones = append(rail.Zones, ui.RailZone{From: at, To: rail.Max, Color: ui.Fade(t.Bad, 0.75), FadeLow: math.Min(shown(u.Altitude, 400*perf.Foot), (rail.Max-at)/2)})
 		rail.Warn = air.DensityAltitude > s.DensityAltitude
 	}
 	rail.Ink = t.Ink
 	return rail
+}
+
+// above is the sign of a ceiling that lies beyond the rail.
+func above(height, top float64) string {
+	if height > top {
+		return " ↑"
+	}
+	return ""
 }
 
 // massRail is the weight rail over its block.

@@ -86,3 +86,337 @@ func TestDragMassFollowsTheFinger(t *testing.T) {
 	}
 	p.sameAsSolve()
 }
+
+func TestDragAltitudeHoldsTheDay(t *testing.T) {
+	p := newPilot(t, 800, 1280)
+	deviation := func() float64 {
+		air, err := airOf(p.app.Case())
+		if err != nil {
+			t.Fatal(err)
+		}
+		standard, err := perf.AirAtDensityAltitude(air.PressureAltitude)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return air.Temperature - standard.Temperature
+	}
+	before, file := deviation(), p.file()
+	highest := 0.0
+	p.dragBy(3, handleAltitude, -7, -120, 25, func() {
+		p.sameAsSolve()
+		if d := deviation() - before; math.Abs(d) > 1e-9 {
+			t.Fatalf("the deviation from the standard temperature moved by %g K", d)
+		}
+		air, _ := airOf(p.app.Case())
+		highest = math.Max(highest, air.DensityAltitude)
+	})
+	air, _ := airOf(p.app.Case())
+	if feet := air.DensityAltitude / perf.Foot; highest < 8000*perf.Foot || math.Abs(feet-100*math.Round(feet/100)) > 1e-6 {
+		t.Errorf("dragged to a density altitude of %g ft", feet)
+	}
+	if got := p.control(handleAltitude).Value; math.Abs(got-air.DensityAltitude) > 1e-6 {
+		t.Errorf("the slider says %g m, the air is at %g m", got, air.DensityAltitude)
+	}
+	p.tap("undo")
+	if p.file() != file {
+		t.Error("undo does not give the day back")
+	}
+}
+
+func TestScalesStayUnderTheFinger(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	x, y, ranges := p.app.chart.x, p.app.chart.y, p.app.ranges
+	still := func() {
+		if p.app.chart.x != x || p.app.chart.y != y || p.app.ranges.altitude != ranges.altitude || p.app.ranges.mass != ranges.mass {
+			t.Fatal("a scale moved during a drag")
+		}
+	}
+	p.dragBy(1, handleAltitude, 0, -250, 30, still)
+	p.dragBy(1, handleMass, -400, 0, 30, still)
+	p.dragBy(1, handleMass, 900, 0, 30, still)
+}
+
+func TestHandleStaysUnderTheFinger(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	x, y := middle(p.control(handleMass).Bounds)
+	p.down(1, x+6, y)
+	p.move(1, x-60, y)
+	start, _ := middle(p.control(handleMass).Bounds)
+	p.move(1, x-160, y)
+	end, _ := middle(p.control(handleMass).Bounds)
+	if d := (start - end) - 100; math.Abs(d) > 2.5 { // a whole kilogram is about two pixels
+		t.Errorf("the finger moved 100 px, the handle %g", start-end)
+	}
+	p.up(1, x-160, y)
+}
+
+func TestManyMovesSolveOnce(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	x, y := middle(p.control(handleMass).Bounds)
+	p.down(1, x, y)
+	before := p.app.Solves()
+	var events []ui.Event
+	for i := 0; i < 20; i++ {
+		events = append(events, ui.Event{Kind: ui.PointerMove, Pointer: 1, Touch: true, X: x - 20 - float64(i), Y: y, Time: p.in.Now})
+	}
+	in := p.in
+	in.Events = events
+	if !p.app.Step(in) {
+		t.Fatal("Step did nothing")
+	}
+	if got := p.app.Solves() - before; got != 1 {
+		t.Errorf("20 moves in one Step took %d solves", got)
+	}
+	p.up(1, x-40, y)
+}
+
+func TestIdleStepDoesNothing(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	solves := p.app.Solves()
+	for i := 0; i < 100; i++ {
+		if p.step() {
+			t.Fatal("a Step without events changed something")
+		}
+	}
+	if p.app.Wake() >= 0 {
+		t.Errorf("Wake is %v with nothing to do", p.app.Wake())
+	}
+	p.event(ui.Event{Kind: ui.PointerMove, Pointer: 1, X: 300, Y: 300}) // a mouse passes over
+	if p.step() || p.app.Solves() != solves {
+		t.Error("a passing mouse made work")
+	}
+	if n := testing.AllocsPerRun(100, func() { p.app.Step(p.in) }); n != 0 {
+		t.Errorf("an idle Step allocates %v times", n)
+	}
+	p.tap("speed-kind/TAS")
+	if p.app.Solves() > solves+1 {
+		t.Errorf("a change of view took %d solves", p.app.Solves()-solves)
+	}
+}
+
+func TestDoubleTapTypesAnExactWeight(t *testing.T) {
+	for _, open := range []struct {
+		name string
+		do   func(p *pilot)
+	}{
+		{"double tap", func(p *pilot) { p.doubleTap(handleMass) }},
+		{"enter", func(p *pilot) {
+			p.event(ui.Event{Kind: ui.FocusOn, ID: handleMass})
+			p.event(ui.Event{Kind: ui.KeyDown, ID: handleMass, Key: ui.KeyEnter})
+		}},
+	} {
+		p := newPilot(t, 390, 844)
+		open.do(p)
+		if p.find("key/ok") == nil {
+			t.Fatalf("%s: no keypad", open.name)
+		}
+		p.typeIn("723.4")
+		if got := p.app.Case().Today.MassKg; got != 723.4 {
+			t.Errorf("%s: mass is %g", open.name, got)
+		}
+		if p.find("key/ok") != nil {
+			t.Errorf("%s: the keypad stays open", open.name)
+		}
+		p.sameAsSolve()
+		if p.app.doc.nextUndo() != "weight" {
+			t.Errorf("%s: the step is called %q", open.name, p.app.doc.nextUndo())
+		}
+	}
+}
+
+func TestKeypadOfTheAltitudeHandleHoldsTheDay(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	old := p.app.Case().Today
+	p.doubleTap(handleAltitude)
+	p.typeIn("8125")
+	air, err := airOf(p.app.Case())
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := air.DensityAltitude / perf.Foot; math.Abs(got-8125) > 1e-6 {
+		t.Errorf("density altitude is %g ft", got)
+	}
+	if now := p.app.Case().Today; !(now.OutsideAirTemperatureC < old.OutsideAirTemperatureC && now.OutsideAirTemperatureC > old.OutsideAirTemperatureC-8) {
+		t.Errorf("temperature went from %g to %g °C", old.OutsideAirTemperatureC, now.OutsideAirTemperatureC)
+	}
+	if p.app.Case().Today.AirFrom != old.AirFrom {
+		t.Error("the way of entry changed")
+	}
+}
+
+func TestKeypadCancelAndKeyboard(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	file := p.file()
+	p.doubleTap(handleMass)
+	p.tap("key/7")
+	p.tap("key/cancel")
+	if p.file() != file || p.find("key/ok") != nil {
+		t.Error("cancel changes something")
+	}
+	p.doubleTap(handleMass)
+	for _, r := range "650" {
+		p.event(ui.Event{Kind: ui.KeyDown, Rune: r})
+	}
+	p.key(ui.KeyEnter)
+	if got := p.app.Case().Today.MassKg; got != 650 {
+		t.Errorf("typed 650, got %g", got)
+	}
+	p.doubleTap(handleMass)
+	p.key(ui.KeyEscape)
+	if p.find("key/ok") != nil {
+		t.Error("escape leaves the keypad open")
+	}
+}
+
+func TestTwoFingersOnTwoHandles(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	old := p.app.Case().Today
+	mx, my := middle(p.control(handleMass).Bounds)
+	ax, ay := middle(p.control(handleAltitude).Bounds)
+	p.down(1, mx, my)
+	p.down(2, ax, ay)
+	for i := 1; i <= 10; i++ {
+		p.move(1, mx-float64(8*i), my)
+		p.sameAsSolve()
+		p.move(2, ax, ay-float64(6*i))
+		p.sameAsSolve()
+	}
+	both := p.app.Case().Today
+	if !(both.MassKg < old.MassKg-20 && both.PressureAltitudeM > old.PressureAltitudeM+300) {
+		t.Fatalf("two fingers moved mass to %g kg, height to %g m", both.MassKg, both.PressureAltitudeM)
+	}
+	p.up(1, mx-80, my)
+	p.event(ui.Event{Kind: ui.PointerCancel, Pointer: 2, Touch: true})
+	end := p.app.Case().Today
+	if end.MassKg != both.MassKg || end.PressureAltitudeM != old.PressureAltitudeM || end.OutsideAirTemperatureC != old.OutsideAirTemperatureC {
+		t.Errorf("after lifting one and cancelling the other: %+v", end)
+	}
+	if n := len(p.app.doc.past); n != 1 {
+		t.Errorf("the gesture made %d steps", n)
+	}
+	p.sameAsSolve()
+}
+
+func TestCancelledDragLeavesNoStep(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	file := p.file()
+	x, y := middle(p.control(handleMass).Bounds)
+	p.down(1, x, y)
+	p.move(1, x-100, y)
+	if p.file() == file {
+		t.Fatal("the drag moved nothing")
+	}
+	p.event(ui.Event{Kind: ui.PointerCancel, Pointer: 1, Touch: true})
+	if p.file() != file || p.app.doc.nextUndo() != "" {
+		t.Error("a cancelled drag left something behind")
+	}
+}
+
+func TestArrowKeysMakeOneStep(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	before := p.app.Case().Today.MassKg
+	p.event(ui.Event{Kind: ui.FocusOn, ID: handleMass})
+	for i := 0; i < 5; i++ {
+		p.event(ui.Event{Kind: ui.KeyDown, ID: handleMass, Key: ui.KeyLeft})
+		p.sameAsSolve()
+	}
+	p.event(ui.Event{Kind: ui.KeyDown, ID: handleMass, Key: ui.KeyPageDown})
+	if got := p.app.Case().Today.MassKg; got != before-15 {
+		t.Errorf("five arrows and a page give %g, want %g", got, before-15)
+	}
+	if n := len(p.app.doc.past); n != 1 {
+		t.Errorf("%d steps", n)
+	}
+	p.key(ui.KeyUndo)
+	if got := p.app.Case().Today.MassKg; got != before {
+		t.Errorf("undo gives %g, want %g", got, before)
+	}
+}
+
+func TestSpeedKindSwitchesAxisAndPanel(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	for _, kind := range []string{"IAS", "TAS", "CAS"} {
+		p.tap("speed-kind/" + kind)
+		if !p.says("kt " + kind) {
+			t.Errorf("%s: the axis does not say so", kind)
+		}
+		r := p.row("fastest_level")
+		want := map[string]float64{"IAS": r.IASMps, "CAS": r.CASMps, "TAS": r.TASMps}[kind]
+		c := p.control("limit/fastest_level")
+		if c.Value != want {
+			t.Errorf("%s: the panel has %g, want %g", kind, c.Value, want)
+		}
+		if got := p.app.units.SpeedWhole(want).Number; r.ValueText != got {
+			t.Errorf("%s: shown %q, want %q", kind, r.ValueText, got)
+		}
+		p.sameAsSolve()
+	}
+}
+
+func TestMarkingWorksBothWays(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	p.tap("limit/best_glide")
+	if !p.row("best_glide").Selected || !p.control("limit/best_glide").Selected {
+		t.Fatal("a tapped row is not marked")
+	}
+	x := p.app.chart.x.Pos(p.row("fastest_climb").CASMps)
+	p.in.Now += 1e9
+	p.tapAt(x+3, p.app.chart.y.Pos(p.app.solved.powerAt(&p.app.solved.required, p.row("fastest_climb").CASMps))+20)
+	if !p.row("fastest_climb").Selected && !p.row("best_glide").Selected {
+		t.Error("a tap near a mark on the chart selects nothing")
+	}
+	p.tap("limit/never_exceed")
+	if !p.row("never_exceed").Selected || p.row("best_glide").Selected {
+		t.Error("another row does not take over")
+	}
+	p.in.Now += 1e9
+	r := p.app.layout.plot
+	p.tapAt(r.X+4, r.Y+r.H-6)
+	if p.row("never_exceed").Selected {
+		t.Error("a tap on nothing leaves the mark")
+	}
+}
+
+func TestNoLevelFlightSaysWhatIsMissing(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	p.setSlider(handleMass, 830)
+	p.setSlider(handleAltitude, 6200)
+	ans := &p.app.solved.answer
+	if ans.Outcome == perf.LevelFlight {
+		t.Skip("the demo still flies here")
+	}
+	for _, want := range []string{"No level flight", p.app.units.PowerFine(ans.Shortfall).Number, p.app.units.MassWhole(ans.Level.Mass).Number, "required", "available"} {
+		if !p.says(want) {
+			t.Errorf("the chart does not say %q", want)
+		}
+	}
+	if m := p.app.Mirror(); len(m.Warnings) == 0 || m.Summary == "" {
+		t.Error("the mirror does not warn")
+	}
+	p.sameAsSolve()
+}
+
+func TestUnitsChangeWhatIsShownOnly(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	before := p.row("fastest_level")
+	p.tap("menu")
+	for _, id := range []string{"unit/speed/mph", "unit/altitude/m", "unit/mass/lb", "unit/power/hp", "unit/fuel/US gal", "unit/length/ft"} {
+		p.tap(id)
+	}
+	p.key(ui.KeyEscape)
+	after := p.row("fastest_level")
+	if after.CASMps != before.CASMps {
+		t.Error("a unit changes a speed")
+	}
+	for _, want := range []string{"mph CAS", "Power, hp", "Density altitude, m", "lb"} {
+		if !p.says(want) {
+			t.Errorf("nothing says %q", want)
+		}
+	}
+	for i := 0; i < 6; i++ {
+		p.key(ui.KeyUndo)
+	}
+	if p.row("fastest_level").ValueText != before.ValueText || p.app.doc.nextUndo() != "" {
+		t.Error("six undos do not take six units back")
+	}
+}

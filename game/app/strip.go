@@ -32,7 +32,7 @@ func (a *App) drawStrip(f *ui.Frame) {
 	texts := a.mirror.Warnings
 	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
 	if len(texts) == 0 {
-		f.Scene.FillRect(r, 0, t.Bar)
+		f.Scene.FillRect(a.toEdges(r), 0, t.Bar)
 		h := f.ParagraphHeight(scene.Body, in.W, a.mirror.Summary)
 		if h > r.H-8 {
 			h = f.ParagraphHeight(scene.Small, in.W, a.mirror.Summary)
@@ -42,8 +42,8 @@ func (a *App) drawStrip(f *ui.Frame) {
 		f.Paragraph(scene.Body, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, a.mirror.Summary, t.Ink)
 		return
 	}
-	f.Scene.FillRect(r, 0, t.CautionBack)
-	f.Scene.FillRect(scene.Rect{X: r.X, Y: r.Y, W: 4, H: r.H}, 0, t.Caution)
+	f.Scene.FillRect(a.toEdges(r), 0, t.CautionBack)
+	f.Scene.FillRect(scene.Rect{X: a.toEdges(r).X, Y: r.Y, W: 4, H: r.H}, 0, t.Caution)
 	sign, words := ui.CutLeft(in, 40)
 	f.Icon(ui.IconWarning, sign, 24, t.Caution)
 	text := strings.Join(texts, " ")

@@ -69,6 +69,9 @@ func putText(c *casefile.Case, path, text string) error {
 
 // pressText gives a key to the text that is being edited and reports whether it was meant for it.
 func (a *App) pressText(act *ui.Action) bool {
+	if path, isField := strings.CutPrefix(act.ID, "field/"); isField && act.ID != a.view.text.ID && act.Rune != 0 {
+		a.beginText(path, nil)
+	}
 	if act.ID == "" || act.ID != a.view.text.ID {
 		return false
 	}
