@@ -23,7 +23,7 @@ var walls = []struct {
 	{"perf/estimate", []string{"levelspan/perf", "levelspan/perf/num"}},
 	{"perf/trip", []string{"levelspan/perf", "levelspan/perf/num"}},
 	{"perf/casefile", []string{"levelspan/perf/..."}},
-	{"assets", []string{"levelspan/assets/..."}},
+	{"assets", []string{"golang.org/x/image/...", "levelspan/assets/..."}},
 	{"game/scene", []string{"golang.org/x/image/...", "levelspan/assets/...", "levelspan/game/scene/..."}},
 	{"game/ui", []string{"levelspan/game/scene", "levelspan/game/ui/..."}},
 	{"game/app", []string{"levelspan/perf/...", "levelspan/game/scene", "levelspan/game/ui/...", "levelspan/assets/..."}},
