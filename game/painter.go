@@ -17,15 +17,11 @@ type painter struct {
 	options  ebiten.DrawTrianglesOptions
 }
 
-// build makes the triangles of a scene.
-func (p *painter) build(s *scene.Scene) {
+// paint replaces what is on dst by the scene.
+func (p *painter) paint(dst *ebiten.Image, s *scene.Scene) {
 	p.mesh.Build(s)
 	p.upload(p.mesh.Atlas())
 	p.options.ColorScaleMode = ebiten.ColorScaleModePremultipliedAlpha
-}
-
-// paint lays the scene last built over all of dst.
-func (p *painter) paint(dst *ebiten.Image) {
 	for _, b := range p.mesh.Batches {
 		target := dst
 		if clip := b.Clip.Intersect(dst.Bounds()); clip != dst.Bounds() {

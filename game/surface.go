@@ -4,8 +4,6 @@ package game
 
 import (
 	"fmt"
-	"image"
-	"image/color"
 	"runtime/debug"
 
 	"github.com/hajimehoshi/ebiten/v2"
@@ -27,6 +25,7 @@ type Surface struct {
 	failed  func(why string)
 	painter painter
 	shown   *scene.Scene // what is on the screen, nil before the first
+	canvas  *ebiten.Image
 	dirty   bool
 	dead    bool
 
@@ -65,28 +64,16 @@ func (s *Surface) Update() (err error) {
 	return nil
 }
 
-// Draw only tells ebiten that there is something to present: it leaves out frames whose offscreen image was not
-// touched. The scene goes onto the screen itself, in DrawFinalScreen, which spares a copy of the whole screen.
-func (s *Surface) Draw(offscreen *ebiten.Image) {
-	if s.dirty {
-		offscreen.SubImage(image.Rect(0, 0, 1, 1)).(*ebiten.Image).Fill(color.White)
-	}
-}
-
-// DrawFinalScreen paints the scene. The screen keeps nothing from one frame to the next.
-func (s *Surface) DrawFinalScreen(screen ebiten.FinalScreen, _ *ebiten.Image, _ ebiten.GeoM) {
+// Draw paints the scene if it is new or the screen is. (Painting onto the final screen itself would spare a copy, but
+// ebiten turns that upside down and not the clips with it, and under SwiftShader the copy made no measurable difference.)
+func (s *Surface) Draw(screen *ebiten.Image) {
 	defer s.guard()
-	target, ok := screen.(*ebiten.Image)
-	if !ok || s.shown == nil {
+	if s.shown == nil || !s.dirty && s.canvas == screen {
 		return
 	}
-	if s.dirty {
-		s.painter.build(s.shown)
-	}
-	s.painter.paint(target)
-	fresh := s.dirty
-	s.dirty = false
-	if fresh && s.AfterDraw != nil {
+	s.canvas, s.dirty = screen, false
+	s.painter.paint(screen, s.shown)
+	if s.AfterDraw != nil {
 		s.AfterDraw()
 	}
 }

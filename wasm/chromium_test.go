@@ -257,6 +257,18 @@ func (b *tab) click(x, y float64) {
 	b.settle()
 }
 
+// doubleClick clicks twice at a place, 150 ms apart by the events' own clock, however long the machine takes.
+func (b *tab) doubleClick(x, y float64) {
+	b.t.Helper()
+	start := float64(time.Now().UnixMicro()) / 1e6
+	for i, kind := range []input.DispatchMouseEventType{input.DispatchMouseEventTypeMousePressed, input.DispatchMouseEventTypeMouseReleased,
+		input.DispatchMouseEventTypeMousePressed, input.DispatchMouseEventTypeMouseReleased} {
+		at := input.TimeSinceEpoch(start + 0.05*float64(i))
+		b.do(chromedp.MouseEvent(kind, x, y, chromedp.ButtonLeft, chromedp.ClickCount(1+i/2), func(p *input.DispatchMouseEventParams) { p.Timestamp = at }))
+	}
+	b.settle()
+}
+
 // clickOn clicks where a control is drawn.
 func (b *tab) clickOn(id string) {
 	b.t.Helper()

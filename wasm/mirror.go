@@ -163,7 +163,11 @@ func groupOf(c *ui.Control) string {
 	default:
 		return ""
 	}
-	return kind + groupNames.Replace(c.ID[:max(0, strings.LastIndexByte(c.ID, '/'))])
+	stem := c.ID[:max(0, strings.LastIndexByte(c.ID, '/'))]
+	if stem == "tab" {
+		stem = "screens"
+	}
+	return kind + groupNames.Replace(stem)
 }
 
 // stop reports whether Tab halts at a control: in a group only at the selected member, or the first if none is. The

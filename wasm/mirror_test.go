@@ -103,7 +103,7 @@ func TestMirrorControls(t *testing.T) {
 			t.Errorf("%s %s is %q, not %q", c.id, c.attribute, got, c.want)
 		}
 	}
-	if want := "<tablist tab|tab/chart|tab/aeroplane|>|undo|<radiogroup speed kind|speed-kind/IAS|speed-kind/CAS|>|handle/mass|name|list"; p.order != want {
+	if want := "<tablist screens|tab/chart|tab/aeroplane|>|undo|<radiogroup speed kind|speed-kind/IAS|speed-kind/CAS|>|handle/mass|name|list"; p.order != want {
 		t.Errorf("order %s", p.order)
 	}
 	if patch := m.update(controls, nil); patch != "" {

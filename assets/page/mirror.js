@@ -140,6 +140,15 @@
         DO[f[0]](f.slice(1));
       }
     } catch (e) { L.fail('The mirror of the drawing failed: ' + e.message); } finally { busy = false; }
+    enter();
+  };
+
+  // enter moves the focus into a dialog that has opened over the element that had it.
+  const enter = () => {
+    const now = document.activeElement;
+    if (!layer.querySelector('[inert]') || now && now !== document.body && !now.closest('[inert]')) return;
+    const first = layer.querySelector('[data-control][tabindex="0"]:not([inert])');
+    if (first) first.focus({preventScroll: true});
   };
 
   // The focus: the program's word is carried out; the person's move (Tab, a screen reader) is told to the program.

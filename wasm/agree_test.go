@@ -1,0 +1,176 @@
+//go:build !js
+
+package main
+
+import (
+	"bytes"
+	"encoding/json"
+	"fmt"
+	"image"
+	"image/color"
+	"math"
+	"os/exec"
+	"slices"
+	"strings"
+)
+
+// command runs the levelspan command and gives what it prints.
+func (b *tab) command(stdin string, args ...string) string {
+	b.t.Helper()
+	cmd := exec.Command(built.command, args...)
+	cmd.Stdin = strings.NewReader(stdin)
+	var errs bytes.Buffer
+	cmd.Stderr = &errs
+	out, err := cmd.Output()
+	if err != nil && cmd.ProcessState.ExitCode() != 1 {
+		b.t.Fatalf("levelspan %s: %v\n%s", strings.Join(args, " "), err, errs.String())
+	}
+	return string(out)
+}
+
+// activate does what a screen reader does: it activates a control's element without a pointer.
+func (b *tab) activate(id string) {
+	b.t.Helper()
+	b.control(id)
+	name, _ := json.Marshal(id)
+	eval[bool](b, fmt.Sprintf("document.querySelector('[data-control=' + CSS.escape(%s) + ']').click(), true", name))
+	b.settle()
+}
+
+// fragment is the share link's fragment for the case that the page shows, by its own Share button.
+func (b *tab) fragment() string {
+	b.t.Helper()
+	eval[bool](b, "document.getElementById('levelspan-copied').textContent = '', true")
+	b.clickOn("share")
+	b.until("document.getElementById('levelspan-copied').textContent")
+	_, fragment, found := strings.Cut(eval[string](b, "document.getElementById('levelspan-copied').textContent"), "#case=")
+	if !found {
+		b.t.Fatal("the link copied has no case in it")
+	}
+	return fragment
+}
+
+// caseFile is the case that the page shows, as a file.
+func (b *tab) caseFile() string {
+	b.t.Helper()
+	return b.command("", "open", b.fragment())
+}
+
+// row is a limit as the mirror has it.
+type row struct {
+	Key, Value, SetBy string
+	CAS, TAS, IAS     string
+}
+
+func (b *tab) rows() []row {
+	b.t.Helper()
+	text := eval[string](b, `JSON.stringify([...document.querySelectorAll('#levelspan-limits tr[data-key]')].map(r => {
+		const v = r.querySelector('[data-cas-mps]'); return {Key: r.dataset.key, Value: v.textContent, SetBy: r.children[3].textContent,
+		CAS: v.dataset.casMps, TAS: v.dataset.tasMps, IAS: v.dataset.iasMps}; }))`)
+	var rows []row
+	if err := json.Unmarshal([]byte(text), &rows); err != nil {
+		b.t.Fatal(err)
+	}
+	return rows
+}
+
+// same reports whether two numbers are the same speed: printed digits apart from the last of sixteen, where the
+// processor's own exponential may differ from WebAssembly's.
+func same(shown string, want float64) bool {
+	var v float64
+	if _, err := fmt.Sscan(shown, &v); err != nil {
+		return false
+	}
+	return math.Abs(v-want) <= 1e-12*math.Abs(want)
+}
+
+// agree demands that the page's table is that of levelspan limits for the same case, figure by figure, and gives the
+// case.
+func (b *tab) agree(after string) string {
+	b.t.Helper()
+	file := b.caseFile()
+	var answer struct {
+		Air    map[string]float64
+		Limits []struct {
+			Key   string  `json:"key"`
+			CAS   float64 `json:"cas_mps"`
+			TAS   float64 `json:"tas_mps"`
+			IAS   float64 `json:"ias_mps"`
+			SetBy string  `json:"set_by"`
+		}
+	}
+	if err := json.Unmarshal([]byte(b.command(file, "limits", "-", "--json")), &answer); err != nil {
+		b.t.Fatal(err)
+	}
+	rows := b.rows()
+	if len(rows) != len(answer.Limits) || len(rows) == 0 {
+		b.t.Errorf("after %s: the page has %d limits, the command %d", after, len(rows), len(answer.Limits))
+	}
+	const knot = 1852.0 / 3600
+	for _, l := range answer.Limits {
+		i := slices.IndexFunc(rows, func(r row) bool { return r.Key == l.Key })
+		if i < 0 {
+			b.t.Errorf("after %s: the page lacks %s", after, l.Key)
+			continue
+		}
+		r := rows[i]
+		if !same(r.CAS, l.CAS) || !same(r.TAS, l.TAS) || !same(r.IAS, l.IAS) {
+			b.t.Errorf("after %s: %s is %s %s %s on the page (CAS, TAS, IAS), %v %v %v from the command", after, l.Key, r.CAS, r.TAS, r.IAS, l.CAS, l.TAS, l.IAS)
+		}
+		if want := fmt.Sprintf("%.0f", l.CAS/knot); !strings.HasPrefix(r.Value, want) {
+			b.t.Errorf("after %s: %s is shown as %s, and is %s kt", after, l.Key, r.Value, want)
+		}
+		if l.SetBy == "lift" {
+			l.SetBy = "stall" // the page's word for it
+		}
+		if r.SetBy != l.SetBy {
+			b.t.Errorf("after %s: %s is set by %q on the page, by %q from the command", after, l.Key, r.SetBy, l.SetBy)
+		}
+	}
+	if got := b.attribute("[data-key=density_altitude]", "data-value"); !same(got, answer.Air["density_altitude_m"]) {
+		b.t.Errorf("after %s: density altitude %s on the page, %v from the command", after, got, answer.Air["density_altitude_m"])
+	}
+	return file
+}
+
+// handle is the value of a slider, SI.
+func (b *tab) handle(name string) (v float64) {
+	b.t.Helper()
+	if _, err := fmt.Sscan(b.attribute("[role=slider][data-handle="+name+"]", "aria-valuenow"), &v); err != nil {
+		b.t.Fatalf("handle %s: %v", name, err)
+	}
+	return v
+}
+
+// ink counts the pixels of a part of a picture, given in logical pixels, that differ clearly from its commonest colour.
+func ink(img image.Image, p place, scale float64) int {
+	at := func(x, y int) [3]uint8 {
+		c := color.RGBAModel.Convert(img.At(x, y)).(color.RGBA)
+		return [3]uint8{c.R, c.G, c.B}
+	}
+	part := image.Rect(int(p.X*scale), int(p.Y*scale), int((p.X+p.W)*scale), int((p.Y+p.H)*scale)).Intersect(img.Bounds())
+	counts := map[[3]uint8]int{}
+	for y := part.Min.Y; y < part.Max.Y; y++ {
+		for x := part.Min.X; x < part.Max.X; x++ {
+			counts[at(x, y)]++
+		}
+	}
+	var ground [3]uint8
+	most := 0
+	for c, n := range counts {
+		if n > most {
+			ground, most = c, n
+		}
+	}
+	n := 0
+	for c, count := range counts {
+		far := 0
+		for i := range c {
+			far = max(far, int(math.Abs(float64(c[i])-float64(ground[i]))))
+		}
+		if far > 60 {
+			n += count
+		}
+	}
+	return n
+}
