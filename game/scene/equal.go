@@ -52,6 +52,36 @@ func (s *Scene) Equal(t *Scene) bool {
 	return true
 }
 
+// SameOp tells whether operation i of s draws the same as operation j of t, wherever in the store its points and text
+// are. Ranges that do not lie within their scene are the same only in the same place.
+func SameOp(s *Scene, i int, t *Scene, j int) bool {
+	a, b := s.Ops[i], t.Ops[j]
+	p, q := span(s.Points, a.P0, a.P1), span(t.Points, b.P0, b.P1)
+	x, y := span(s.Text, a.T0, a.T1), span(t.Text, b.T0, b.T1)
+	if len(p) != len(q) || !bytes.Equal(x, y) {
+		return false
+	}
+	for k := range p {
+		if !same(p[k].X, q[k].X) || !same(p[k].Y, q[k].Y) {
+			return false
+		}
+	}
+	if len(p) > 0 {
+		a.P0, a.P1, b.P0, b.P1 = 0, 0, 0, 0
+	}
+	if len(x) > 0 {
+		a.T0, a.T1, b.T0, b.T1 = 0, 0, 0, 0
+	}
+	return a.words() == b.words()
+}
+
+func span[T any](all []T, from, to int) []T {
+	if from < 0 || to > len(all) || from >= to {
+		return nil
+	}
+	return all[from:to]
+}
+
 // CopyFrom makes s an equal scene with a store of its own, which is kept from call to call.
 func (s *Scene) CopyFrom(t *Scene) {
 	s.Width, s.Height, s.Scale, s.Background = t.Width, t.Height, t.Scale, t.Background

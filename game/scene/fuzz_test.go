@@ -3,6 +3,7 @@ package scene_test
 import (
 	"bytes"
 	"encoding/xml"
+	"image"
 	"io"
 	"math"
 	"sync"
@@ -40,10 +41,34 @@ func FuzzScene(f *testing.F) {
 				t.Fatalf("pixel %d is brighter than its alpha: %v", i/4, q)
 			}
 		}
+		checkUpdate(t, s, data, a)
 		for _, opt := range []svg.Options{{}, {Outlines: true}} {
 			checkXML(t, svg.Append(nil, s, opt))
 		}
 	})
+}
+
+// checkUpdate changes a byte of the scene's and compares the updated picture with one painted anew.
+func checkUpdate(t *testing.T, s *scene.Scene, data []byte, a *glyph.Atlas) {
+	if len(data) < 8 {
+		return
+	}
+	data = bytes.Clone(data)
+	data[7+len(data)%(len(data)-7)] ^= 5
+	next := sample.Scene(data)
+	w, h := s.DeviceSize()
+	if x, y := next.DeviceSize(); x != w || y != h {
+		return
+	}
+	var p, fresh raster.Painter
+	p.UseAtlas(a)
+	fresh.UseAtlas(a)
+	dst := image.NewRGBA(image.Rect(0, 0, w, h))
+	p.Update(s, dst)
+	p.Update(next, dst)
+	if d := sample.Compare(dst, fresh.Render(next, nil), 3); d.Count != 0 {
+		t.Fatalf("updated picture: %+v", d)
+	}
 }
 
 func checkMesh(t *testing.T, s *scene.Scene, a *glyph.Atlas) {

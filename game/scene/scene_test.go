@@ -146,6 +146,32 @@ func TestEqualAndHash(t *testing.T) {
 	}
 }
 
+// The same drawing elsewhere in the store is the same operation.
+func TestSameOp(t *testing.T) {
+	var s, u scene.Scene
+	sample.Sheet(&s, 1)
+	u.Reset(320, 240, 1, sample.Paper)
+	u.Label(scene.Small, 1, 2, scene.Left, "before", sample.Ink)
+	n := len(u.Ops)
+	for i := range s.Ops {
+		op := s.Ops[i]
+		op.P0, op.P1, op.T0, op.T1 = op.P0+1, op.P1+1, op.T0+len("before"), op.T1+len("before")
+		if op.Kind != scene.OpText {
+			op.T0, op.T1 = 0, 0
+		}
+		u.Ops = append(u.Ops, op)
+	}
+	u.Points, u.Text = append(u.Points, s.Points...), append(u.Text, s.Text...)
+	for i := range s.Ops {
+		if s.Ops[i].P1 > s.Ops[i].P0 && !scene.SameOp(&s, i, &u, i+n) {
+			t.Errorf("operation %d differs", i)
+		}
+		if i > 0 && scene.SameOp(&s, i-1, &u, i+n) {
+			t.Errorf("operation %d is the one before", i)
+		}
+	}
+}
+
 // A frame allocates nothing once the scene is warm.
 func TestBuildingAllocatesNothing(t *testing.T) {
 	var c sample.Chart

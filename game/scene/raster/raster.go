@@ -21,6 +21,10 @@ type Painter struct {
 	ink   ink
 	outer []scene.Point
 	emit  func(y, x0, x1 int, alpha uint8)
+
+	shadows [2]shadow // of Update: the last scene and the one before, in turn
+	turn    int
+	dirty   []image.Rectangle
 }
 
 // Render paints a scene into a new picture of its size in device pixels.

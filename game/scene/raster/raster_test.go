@@ -202,6 +202,18 @@ func TestDiv255(t *testing.T) {
 	}
 }
 
+// Two channels at a time is the same as one by one.
+func TestFade(t *testing.T) {
+	rng := rand.New(rand.NewSource(3))
+	for range 200000 {
+		d, k := rng.Uint32(), uint32(rng.Intn(256))
+		want := div255(d&255*k) | div255(d>>8&255*k)<<8 | div255(d>>16&255*k)<<16 | div255(d>>24*k)<<24
+		if got := fade(d, k); got != want {
+			t.Fatalf("%08x times %d: %08x, want %08x", d, k, got, want)
+		}
+	}
+}
+
 func TestEmptyScene(t *testing.T) {
 	if m := Render(new(scene.Scene)); !m.Rect.Empty() {
 		t.Errorf("an empty scene is %v", m.Rect)
