@@ -61,66 +61,64 @@ func (f *flight) leastShaft(d *drag) float64 {
 	return p
 }
 
-// tableRatio is the best ratio of a tabulated propeller, with the power already applied.
+// tableRatio is the best ratio of a tabulated propeller, with the power already applied. It goes along the advance ratio: each, at one
+// thrust coefficient, belongs to the slower of the speeds where d asks for it.
 func (z *Solver) tableRatio(d *drag) float64 {
 	f := &z.now
-	best := f.massRatio(d, f.stall)
-	// The nodes of the table, each at the slower of the speeds where the thrust asked for needs its advance ratio.
-	last, lastRatio := f.stall, best
-	before, beforeRatio := last, 0.0
-	for i := range f.table.node {
-		g := &f.table.node[i]
-		v, ok := f.speedAtAdvance(d, g.tau)
-		if !ok || v <= last*(1+1e-12) {
-			continue
+	start := f.table.advanceOf(d.at(f.stall) / (f.rho * f.dia * f.dia * f.stall * f.stall))
+	j1, r1 := start, f.massRatio(d, start)
+	best := r1
+	j0, r0 := j1, 0.0
+	nodes := f.table.node
+	for i := 0; i < len(nodes)+60; i++ {
+		var j2, r2 float64
+		if i < len(nodes) {
+			g := &nodes[i]
+			if j2 = g.j; j2 <= start*(1+1e-9) {
+				continue
+			}
+			r2 = f.ratioAt(d, j2, g.tau, 1/(g.r2*g.r2))
+		} else {
+			j2 = j1 * 1.5
+			r2 = f.massRatio(d, j2)
 		}
-		ratio := f.massRatio(d, v)
-		if lastRatio >= ratio && lastRatio >= beforeRatio {
-			best = max(best, f.refineRatio(d, before, v))
+		if r1 >= r2 && r1 >= r0 {
+			best = max(best, f.refineRatio(d, j0, j2))
 		}
-		before, beforeRatio = last, lastRatio
-		last, lastRatio = v, ratio
-	}
-	for i := 0; i < 60; i++ {
-		v := last * 1.3
-		ratio := f.massRatio(d, v)
-		if lastRatio >= ratio && lastRatio >= beforeRatio {
-			best = max(best, f.refineRatio(d, before, v))
-		}
-		before, beforeRatio = last, lastRatio
-		last, lastRatio = v, ratio
-		if ratio < beforeRatio && v > 2*f.leastDrag() {
+		if r2 == 0 {
 			break
 		}
+		j0, r0, j1, r1 = j1, r1, j2, r2
 	}
 	return best
 }
 
-// speedAtAdvance is the slower speed at which the thrust d.at(V) is tau rho V^2 D^2.
-func (f *flight) speedAtAdvance(d *drag, tau float64) (float64, bool) {
+// massRatio is how many times today's mass the propeller could carry at an advance ratio; 0 where d nowhere asks for it.
+func (f *flight) massRatio(d *drag, j float64) float64 {
+	ct, _, cp, _ := f.table.at(j)
+	return f.ratioAt(d, j, ct/(j*j), cp)
+}
+
+func (f *flight) ratioAt(d *drag, j, tau, cp float64) float64 {
+	// The thrust tau rho V^2 D^2 is d.at(V): a x^2 - b x + c = 0 with x = V^2. x = 2 c/(b + sqrt(b^2 - 4 a c)) is the slower where a > 0 and
+	// the only one where a < 0.
 	a := d.a - tau*f.rho*f.dia*f.dia
-	if !(a > math.Inf(-1)) {
-		return 0, false
-	}
-	// a x^2 - b x + c = 0; the root with x = 2 c/(b + sqrt(b^2 - 4 a c)) is the slower where a > 0, the only one where a < 0.
 	disc := d.b*d.b - 4*a*d.c
-	if disc < 0 {
-		return 0, false
+	if !(disc >= 0) {
+		return 0
 	}
 	q := d.b + math.Sqrt(disc)
 	if !(q > 0) {
-		return 0, false
+		return 0
 	}
-	return math.Sqrt(2 * d.c / q), true
-}
-
-// massRatio is how many times today's mass the propeller could carry at the lift coefficient of v.
-func (f *flight) massRatio(d *drag, v float64) float64 {
-	t := d.at(v)
-	p, _, n := f.level(v, t, 0)
-	torque := p / (2 * math.Pi * n)
-	r := f.shaft / p
-	return min(f.torque0/torque, math.Cbrt(r*r))
+	x := max(2*d.c/q, f.stall*f.stall)
+	torque := f.rhoD4 / (f.dia * 2 * math.Pi) * cp * x / (j * j)
+	power := 2 * math.Pi * torque * math.Sqrt(x) / (j * f.dia)
+	r, p := f.torque0/torque, f.shaft/power
+	if p*p < r*r*r {
+		return math.Cbrt(p * p)
+	}
+	return r
 }
 
 func (f *flight) refineRatio(d *drag, a, b float64) float64 {
@@ -132,14 +130,12 @@ func (f *flight) refineRatio(d *drag, a, b float64) float64 {
 	return -m.F
 }
 
-// allowance fills the inverse answers for a gradient; 0 is level flight.
-func (z *Solver) allowance(dst *Allowance, gradient float64) {
-	m, ok := z.greatestMass(gradient)
-	dst.MassApplies, dst.Mass = ok, m
-	if !ok {
-		dst.Mass = 0
+// allowance fills the inverse answers for a gradient above 0.
+func (z *Solver) allowance(dst *Allowance, gradient float64, absolute *Ceiling) {
+	if m, ok := z.greatestMass(gradient); ok {
+		dst.MassApplies, dst.Mass = true, m
 	}
-	h, ok := z.greatestHeight(gradient, z.excess/z.now.weight-gradient, true)
+	h, ok := z.gradientHeight(gradient, absolute)
 	if !ok {
 		return
 	}

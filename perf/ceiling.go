@@ -1,6 +1,10 @@
 package perf
 
-import "levelspan/perf/num"
+import (
+	"math"
+
+	"levelspan/perf/num"
+)
 
 // ServiceRate is the rate of climb that is left at the service ceiling, m/s: 100 ft/min (common practice).
 const ServiceRate = 0.508
@@ -13,12 +17,13 @@ func (z *Solver) climbAt(h, target float64, gradient bool) float64 {
 	s := z.day.at(h)
 	f := &z.high
 	z.fly(f, &s, z.c.Mass)
-	var x float64
+	var v, x float64
 	if gradient {
-		_, x = z.greatestGradient(f)
+		v, x = z.greatestGradient(f)
 	} else {
-		_, x = z.greatestRate(f)
+		v, x = z.greatestRate(f)
 	}
+	z.highest, z.highestSpeed = h, v
 	return x/f.weight - target
 }
 
@@ -39,39 +44,47 @@ func (z *Solver) falls() bool {
 func (z *Solver) peaks() bool { return z.a.Propeller.Kind != Tabulated }
 
 // greatestHeight is the greatest height inside the atmosphere's domain at which the climb is at least the target; false where
-// it is so even at the top, or nowhere. here is today's climb less the target.
-func (z *Solver) greatestHeight(target, here float64, gradient bool) (float64, bool) {
-	top := z.climbAt(highestHeight, target, gradient)
-	if top >= 0 {
-		return 0, false
-	}
-	lo, flo := z.c.Air.PressureAltitude, here
-	hi, fhi := highestHeight, top
+// it is so even at the top, or nowhere. here is today's climb less the target; above is a height with the climb there less the target, from which
+// upwards it is known to be less.
+func (z *Solver) greatestHeight(target, here float64, gradient bool, above, there float64) (float64, bool) {
+	today := z.c.Air.PressureAltitude
+	lo, flo := today, here
+	hi, fhi := above, there
 	switch {
 	case here >= 0 && z.peaks():
 	case z.falls():
-		hi, fhi = lo, here
+		hi, fhi = today, here
 		lo, flo = lowestHeight, z.climbAt(lowestHeight, target, gradient)
 		if flo < 0 {
 			return 0, false
 		}
 	default:
-		found := false
+		step := ceilingStep
+		if here >= 0 {
+			step *= 2 // there is a crossing above for certain; only a second one could hide
+		}
 		critical := z.a.Engine.FullThrottleAltitude
-		for !found && hi > lowestHeight {
-			h := max(hi-ceilingStep, lowestHeight)
+		for flo = -1; flo < 0; {
+			if hi <= lowestHeight {
+				return 0, false
+			}
+			h := max(hi-step, lowestHeight)
 			if h < critical && critical < hi {
 				h = critical
 			}
-			x := z.climbAt(h, target, gradient)
-			if x >= 0 {
-				lo, flo, found = h, x, true
-			} else {
+			if here >= 0 && h < today && today < hi {
+				lo, flo = today, here
+				break
+			}
+			x := z.glance(h, target, gradient)
+			if x < 0 {
 				hi, fhi = h, x
+			} else {
+				lo, flo = h, x
 			}
 		}
-		if !found {
-			return 0, false
+		if z.k.kind == Tabulated {
+			return z.tableHeight(lo, flo, hi, fhi, target, gradient), true
 		}
 	}
 	var r num.Root
@@ -82,18 +95,172 @@ func (z *Solver) greatestHeight(target, here float64, gradient bool) (float64, b
 	return r.X, true
 }
 
-// ceiling fills the ceiling where the greatest rate of climb falls to rate.
-func (z *Solver) ceiling(dst *Ceiling, rate float64) {
-	dst.Rate = rate
-	h, ok := z.greatestHeight(rate, z.power/z.now.weight-rate, false)
-	if !ok {
-		return
+// glanceMargin is by how much of the drag (or power required) the nodes of a table may miss the top of a hump between them: with
+// nodes a sixth apart the drag is a few hundredths above its least.
+const glanceMargin = 0.06
+
+// glance has the sign of climbAt. For a tabulated propeller it looks at the nodes of the table alone where that decides.
+func (z *Solver) glance(h, target float64, gradient bool) float64 {
+	if z.k.kind != Tabulated {
+		return z.climbAt(h, target, gradient)
 	}
 	s := z.day.at(h)
-	z.fly(&z.high, &s, z.c.Mass)
-	v, _ := z.greatestRate(&z.high)
+	f := &z.high
+	z.highest = math.NaN()
+	z.fly(f, &s, z.c.Mass)
+	if f.kind != Tabulated {
+		return -1 - target // no power: no thrust
+	}
+	best, drag := math.Inf(-1), 0.0
+	first, at := -1, -1
+	aim := target * f.weight
+	for i := range f.table.node {
+		g := &f.table.node[i]
+		n := min(f.tq*g.r2, f.tp*g.r3)
+		v := g.j * n * f.dia
+		if v < f.stall {
+			continue
+		}
+		d := f.drag.at(v)
+		x := f.rhoD4*n*n*g.ct - d
+		if !gradient {
+			x *= v
+			d *= v
+		}
+		if first < 0 {
+			first = i
+		}
+		if x > best {
+			best, drag, at = x, d, i
+		}
+	}
+	// With the best at the first node the top may lie between it and the stall.
+	if x := best - aim; x >= 0 || at > first && x < -glanceMargin*drag {
+		return x / f.weight
+	}
+	return z.climbAt(h, target, gradient)
+}
+
+// tableHeight is the height in a bracket where a tabulated propeller's climb is the target. The advance ratio of the best climb is
+// carried from height to height and only nudged; where that has followed a lesser hump, the whole scan is done at every height.
+func (z *Solver) tableHeight(lo, flo, hi, fhi, target float64, gradient bool) float64 {
+	of := ofPower
+	if gradient {
+		of = ofThrust
+	}
+	f := &z.high
+	z.highest = math.NaN()
+	s := z.day.at(lo)
+	z.fly(f, &s, z.c.Mass)
+	j := 0.0
+	if f.kind == Tabulated {
+		z.scan(f)
+		q, _ := f.scanMaximum(z.nodes, of)
+		j = q.p
+	}
+	var r num.Root
+	if j > 0 {
+		r.Start(lo, flo, hi, fhi, 1e-7)
+		for r.Next() {
+			s := z.day.at(r.X)
+			z.fly(f, &s, z.c.Mass)
+			if f.kind != Tabulated {
+				r.Put(-target - 1)
+				continue
+			}
+			var x float64
+			j, x = f.nudge(j, of)
+			r.Put(x/f.weight - target)
+		}
+		if x := z.climbAt(r.X, target, gradient); math.Abs(x) <= 1e-9*max(1, target) {
+			return r.X
+		}
+	}
+	r.Start(lo, flo, hi, fhi, 1e-7)
+	for r.Next() {
+		r.Put(z.climbAt(r.X, target, gradient))
+	}
+	return r.X
+}
+
+// nudge moves an advance ratio to the top of the hump it is on by secant steps on the slope, and gives the merit there. It is held
+// at or above the stall.
+func (f *flight) nudge(j float64, of int) (float64, float64) {
+	m, d, q := f.meritSlope(j, of)
+	best, top := j, m
+	h := 1e-3 * j
+	if d < 0 {
+		h = -h
+	}
+	for range 12 {
+		k := j + h
+		m2, d2, q2 := f.meritSlope(k, of)
+		if q2.v < f.stall {
+			k = f.param(f.stall)
+			m2, _, _ = f.meritSlope(k, of)
+			if m2 >= top || q.v < f.stall {
+				return k, m2
+			}
+			return best, top
+		}
+		if m2 > top || q.v < f.stall {
+			best, top = k, m2
+		}
+		step := -d2 * (k - j) / (d2 - d)
+		if math.Abs(step) > 0.1*k || math.IsNaN(step) {
+			step = math.Copysign(0.05*k, d2)
+		}
+		j, d, h, q = k, d2, step, q2
+		if math.Abs(step) < 1e-7*k {
+			break
+		}
+	}
+	return best, top
+}
+
+// ceilings fills both ceilings: the greatest height for a rate of 0 bounds the one for any rate or gradient above it.
+func (z *Solver) ceilings(dst *Answer) {
+	dst.Service.Rate = ServiceRate
+	rate := z.power / z.now.weight
+	z.above, z.there, z.overhead = highestHeight, z.climbAt(highestHeight, 0, false), true
+	if z.there < 0 {
+		h, ok := z.greatestHeight(0, rate, false, z.above, z.there)
+		if !ok {
+			z.overhead = false
+			return
+		}
+		z.ceiling(&dst.Absolute, h)
+		z.above, z.there = h, 0
+	}
+	if z.there -= ServiceRate; z.there < 0 {
+		if h, ok := z.greatestHeight(ServiceRate, rate-ServiceRate, false, z.above, z.there); ok {
+			z.ceiling(&dst.Service, h)
+		}
+	}
+}
+
+func (z *Solver) ceiling(dst *Ceiling, h float64) {
+	if z.highest != h {
+		z.climbAt(h, 0, false)
+	}
 	dst.Applies = true
 	dst.PressureAltitude = h
-	dst.DensityAltitude = heightOfDensity(s.density)
-	dst.TAS = TAS(v)
+	dst.DensityAltitude = heightOfDensity(z.high.rho)
+	dst.TAS = TAS(z.highestSpeed)
+}
+
+// gradientHeight is the greatest height for a gradient above 0.
+func (z *Solver) gradientHeight(gradient float64, absolute *Ceiling) (float64, bool) {
+	if !z.overhead {
+		return 0, false
+	}
+	here := z.excess/z.now.weight - gradient
+	if absolute.Applies {
+		return z.greatestHeight(gradient, here, true, absolute.PressureAltitude, -gradient)
+	}
+	top := z.climbAt(highestHeight, gradient, true)
+	if top >= 0 {
+		return 0, false
+	}
+	return z.greatestHeight(gradient, here, true, highestHeight, top)
 }

@@ -19,8 +19,8 @@ func (z *Solver) greatestRate(f *flight) (v, power float64) {
 	case ConstantSpeed:
 		return f.discRate()
 	}
-	z.nodes = f.scan(z.nodes)
-	q, m, _ := f.scanMaximum(z.nodes, ofPower)
+	z.scan(f)
+	q, m := f.scanMaximum(z.nodes, ofPower)
 	return q.v, m
 }
 
@@ -36,8 +36,8 @@ func (z *Solver) greatestGradient(f *flight) (v, thrust float64) {
 	case ConstantSpeed:
 		return f.discGradient()
 	}
-	z.nodes = f.scan(z.nodes)
-	q, m, _ := f.scanMaximum(z.nodes, ofThrust)
+	z.scan(f)
+	q, m := f.scanMaximum(z.nodes, ofThrust)
 	return q.v, m
 }
 

@@ -37,8 +37,8 @@ func (z *Solver) levelSpan(f *flight, v float64) span {
 			slow = f.discRoot(v, u, false)
 		}
 	default:
-		z.nodes = f.scan(z.nodes)
-		q, _, _ := f.scanMaximum(z.nodes, ofThrust)
+		z.scan(f)
+		q, _ := f.scanMaximum(z.nodes, ofThrust)
 		lo, hi, stalled := f.scanBand(z.nodes, q)
 		s.fast = hi
 		if !stalled {
@@ -123,7 +123,7 @@ func (z *Solver) levelFlight(dst *Answer) (s span, ok bool) {
 // holdSpeed narrows the band to where level flight, throttle set for it, takes no more than n rev/s.
 func (z *Solver) holdSpeed(s *span, n float64, dst *Answer) bool {
 	f, g := &z.now, &z.other
-	f.capped(g, n)
+	z.capped(f, g, n)
 	v, x := z.greatestGradient(g)
 	if x >= 0 {
 		h := z.levelSpan(g, v)

@@ -33,6 +33,8 @@ type flight struct {
 	table   *propellerTable
 	dia     float64
 	tq, tp  float64 // n = tq CP^(-1/2) at full throttle, n = tp CP^(-1/3) at the power asked for
+	turn    float64 // CP above which the torque is the less
+	serial  uint64  // which flight the solver's scan belongs to
 	cap     float64 // no more than this, rev/s
 	rhoD4   float64
 	torque0 float64 // full torque (table) or torque at the setting (fixed pitch), N m
@@ -79,8 +81,10 @@ func (z *Solver) fly(f *flight, s *sky, mass float64) {
 		f.table = &z.table
 		f.rhoD4 = rho * d * d * d * d
 		f.torque0 = full * e.RatedPower / (2 * math.Pi * e.RatedSpeed)
-		f.tq = math.Sqrt(2 * math.Pi * f.torque0 / (f.rhoD4 * d))
-		f.tp = math.Cbrt(f.shaft / (f.rhoD4 * d))
+		q, p := 2*math.Pi*f.torque0/(f.rhoD4*d), f.shaft/(f.rhoD4*d)
+		f.tq, f.tp, f.turn = math.Sqrt(q), math.Cbrt(p), q*q*q/(p*p)
+		z.serial++
+		f.serial = z.serial
 		if !(f.tq > 0 && f.tp > 0) {
 			f.kind, f.useful, f.eta = ConstantEfficiency, 0, 1 // no power: no thrust
 		}
@@ -106,16 +110,33 @@ func (f *flight) at(p float64) (v, t, slope float64) {
 	return v, t, f.rhoD4 * n * (2*dn*ct + n*dct) / (f.dia * (n + p*dn))
 }
 
+// atNode is at for a node of the table's scan.
+func (f *flight) atNode(g *tableNode) (v, t, slope float64) {
+	n, dn := f.tq*g.r2, 0.0
+	if m := f.tp * g.r3; m < n {
+		n, dn = m, -m*g.lcp/3
+	} else {
+		dn = -0.5 * n * g.lcp
+	}
+	if f.cap <= n {
+		n, dn = f.cap, 0
+	}
+	return g.j * n * f.dia, f.rhoD4 * n * n * g.ct, f.rhoD4 * n * (2*dn*g.ct + n*g.dct) / (f.dia * (n + g.j*dn))
+}
+
 // speedOfTable is the rpm (rev/s) at full throttle, or at the power asked for where that is less, or the cap, and its slope against J.
 func (f *flight) speedOfTable(cp, dcp float64) (n, dn float64) {
-	n1, n2 := f.tq/math.Sqrt(cp), f.tp/math.Cbrt(cp)
-	switch {
-	case f.cap <= n1 && f.cap <= n2:
-		return f.cap, 0
-	case n1 <= n2:
-		return n1, -0.5 * n1 * dcp / cp
+	if cp >= f.turn {
+		n = f.tq / math.Sqrt(cp)
+		dn = -0.5 * n * dcp / cp
+	} else {
+		n = f.tp / math.Cbrt(cp)
+		dn = -n * dcp / (3 * cp)
 	}
-	return n2, -n2 * dcp / (3 * cp)
+	if f.cap <= n {
+		return f.cap, 0
+	}
+	return n, dn
 }
 
 // param is the parameter at speed v > 0.
@@ -254,8 +275,10 @@ func (f *flight) revs(v float64) float64 {
 
 // capped is the flight with the rpm held to its maximum, n: for a fixed-pitch propeller the curve at that rpm itself, which is again
 // of the form t0 + t2 V^2; for a tabulated one the full-throttle curve where the rpm is below.
-func (f *flight) capped(g *flight, n float64) {
+func (z *Solver) capped(f, g *flight, n float64) {
 	*g = *f
+	z.serial++
+	g.serial = z.serial
 	g.cap = n
 	if f.kind == FixedPitch {
 		g.t0 = f.slope * f.rhoD4 * f.cp0 * n * n

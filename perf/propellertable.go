@@ -27,9 +27,10 @@ type propellerTable struct {
 
 // tableNode is one point of the scan, with what no condition changes.
 type tableNode struct {
-	j, ct  float64
-	r2, r3 float64 // CP^(-1/2), CP^(-1/3)
-	tau    float64 // CT/J^2
+	j, ct, dct float64
+	r2, r3     float64 // CP^(-1/2), CP^(-1/3)
+	lcp        float64 // CP'/CP
+	tau        float64 // CT/J^2
 }
 
 // set readies the table; at least 3 rows of rising advance ratio. The same rows again cost only the comparison.
@@ -92,8 +93,8 @@ func grow[T any](s []T, n int) []T {
 }
 
 func (t *propellerTable) addNode(j float64) {
-	ct, _, cp, _ := t.at(j)
-	n := tableNode{j: j, ct: ct, r2: 1 / math.Sqrt(cp), r3: 1 / math.Cbrt(cp), tau: math.Inf(1)}
+	ct, dct, cp, dcp := t.at(j)
+	n := tableNode{j: j, ct: ct, dct: dct, lcp: dcp / cp, r2: 1 / math.Sqrt(cp), r3: 1 / math.Cbrt(cp), tau: math.Inf(1)}
 	if j > 0 {
 		n.tau = ct / (j * j)
 	}

@@ -17,15 +17,21 @@ type point struct {
 // excess is T - D, N.
 func (f *flight) excess(q *point) float64 { return q.t - f.drag.at(q.v) }
 
-// scan fills nodes from the stall upwards until the thrust is below the drag beyond the speed of least drag.
-func (f *flight) scan(nodes []point) []point {
-	nodes = nodes[:0]
+// scan fills the solver's nodes for f from the stall upwards until the thrust is below the drag beyond the speed of least drag. A
+// flight that was scanned last is not scanned again.
+func (z *Solver) scan(f *flight) {
+	if z.scanned == f.serial && f.serial != 0 {
+		return
+	}
+	z.scanned = f.serial
+	nodes := z.nodes[:0]
 	p := f.param(f.stall)
-	v, t, _ := f.at(p)
-	nodes = append(nodes, point{p, f.stall, t})
-	top := f.leastDrag()
-	last := nodes[0]
+	_, t, _ := f.at(p)
+	last := point{p, f.stall, t}
+	nodes = append(nodes, last)
+	factor := 1.06
 	if f.kind == Tabulated {
+		factor = 1.5
 		for i := range f.table.node {
 			g := &f.table.node[i]
 			if g.j <= p*(1+1e-9) {
@@ -36,17 +42,14 @@ func (f *flight) scan(nodes []point) []point {
 			nodes = append(nodes, last)
 		}
 	}
-	factor := 1.5
-	if f.kind != Tabulated {
-		factor = 1.06
-	}
+	top := f.leastDrag()
 	for i := 0; i < 400 && (last.v < top || f.excess(&last) >= 0 || len(nodes) < 3); i++ {
 		p = last.p * factor
-		v, t, _ = f.at(p)
+		v, t, _ := f.at(p)
 		last = point{p, v, t}
 		nodes = append(nodes, last)
 	}
-	return nodes
+	z.nodes = nodes
 }
 
 // What a search maximises.
@@ -74,8 +77,8 @@ func (f *flight) meritSlope(p float64, of int) (value, slope float64, q point) {
 	return x, dx, q
 }
 
-// scanMaximum is the node-bracketed greatest merit at or above the stall, and the index of the node at or below it.
-func (f *flight) scanMaximum(nodes []point, of int) (best point, value float64, at int) {
+// scanMaximum is the greatest merit at or above the stall: every hump of the nodes is refined.
+func (f *flight) scanMaximum(nodes []point, of int) (best point, value float64) {
 	value = math.Inf(-1)
 	n := len(nodes)
 	before := math.Inf(-1)
@@ -88,12 +91,12 @@ func (f *flight) scanMaximum(nodes []point, of int) (best point, value float64, 
 		if here >= before && here >= after {
 			q, m := f.refine(nodes, i, of)
 			if m > value {
-				best, value, at = q, m, i
+				best, value = q, m
 			}
 		}
 		before, here = here, after
 	}
-	return best, value, at
+	return best, value
 }
 
 // refine finds the local maximum around node i.
@@ -138,7 +141,7 @@ func (f *flight) refine(nodes []point, i, of int) (point, float64) {
 	return q, m
 }
 
-// scanBand is the stretch of speeds around the node-bracketed maximum best (at or after node at) where T >= D.
+// scanBand is the stretch of speeds around the maximum best where T >= D.
 func (f *flight) scanBand(nodes []point, best point) (slow, fast float64, stalled bool) {
 	below := best
 	slow, stalled = nodes[0].v, true

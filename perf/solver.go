@@ -6,23 +6,28 @@ import "math"
 // allocates nothing once it has seen a propeller table of that length; it is not safe for concurrent use. The zero value is
 // ready. It keeps a copy of what it was given, but the lists of the aeroplane are shared: prepare again after changing them.
 type Solver struct {
-	a           Aeroplane
-	c           Condition
-	k           craft
-	day         day
-	now         flight // today
-	other       flight // today with the rpm held
-	high        flight // at another height
-	table       propellerTable
-	nodes       []point
-	vx, excess  float64 // speed of the greatest excess thrust, and that thrust
-	vy, power   float64 // speed of the greatest excess power, and that power
-	neverExceed float64 // TAS; +Inf where none is placarded
-	tasBinds    bool
-	lowJ, highJ float64 // span of the propeller's model
-	levelRevs   [KeyCount]float64
-	faults      faults
-	ready       bool
+	a                     Aeroplane
+	c                     Condition
+	k                     craft
+	day                   day
+	now                   flight // today
+	other                 flight // today with the rpm held
+	high                  flight // at another height
+	table                 propellerTable
+	nodes                 []point // scan of the flight whose serial is scanned
+	serial                uint64
+	scanned               uint64
+	highest, highestSpeed float64 // height of high, and the speed of the greatest climb there
+	above, there          float64 // from this height upwards the climb is known to be less than there
+	overhead              bool    // there is a height of level flight
+	vx, excess            float64 // speed of the greatest excess thrust, and that thrust
+	vy, power             float64 // speed of the greatest excess power, and that power
+	neverExceed           float64 // TAS; +Inf where none is placarded
+	tasBinds              bool
+	lowJ, highJ           float64 // span of the propeller's model
+	levelRevs             [KeyCount]float64
+	faults                faults
+	ready                 bool
 }
 
 // Prepare readies the solver for the curve functions, without solving the limits. The error is that of Validate: joined *DomainError.
@@ -50,6 +55,7 @@ func (z *Solver) Prepare(a *Aeroplane, c *Condition) error {
 		t := a.Propeller.Table
 		z.lowJ, z.highJ = t[0].AdvanceRatio, t[len(t)-1].AdvanceRatio
 	}
+	z.highest = math.NaN()
 	z.ready = true
 	return nil
 }
@@ -71,11 +77,10 @@ func (z *Solver) Solve(a *Aeroplane, c *Condition, dst *Answer) error {
 		z.levelLimits(dst, s)
 		z.tightestTurn(&dst.Turn)
 	}
-	z.ceiling(&dst.Service, ServiceRate)
-	z.ceiling(&dst.Absolute, 0)
+	z.ceilings(dst)
 	z.levelAllowance(dst)
 	if c.ClimbGradient > 0 {
-		z.allowance(&dst.Climb, c.ClimbGradient)
+		z.allowance(&dst.Climb, c.ClimbGradient, &dst.Absolute)
 	}
 	for k := range dst.Limits {
 		if l := &dst.Limits[k]; l.Applies && l.CAS == 0 {

@@ -17,7 +17,10 @@ type turning struct {
 
 // at is V, the thrust-limited m, and half of V^5 d(m^2 - 1/V^4)/dV, at parameter p. m is 0, and the last -1, where the thrust carries nothing.
 func (t *turning) at(p float64) (v, m, half float64) {
-	v, th, dth := t.f.at(p)
+	return t.of(t.f.at(p))
+}
+
+func (t *turning) of(v, th, dth float64) (_, m, half float64) {
 	x := v * v
 	disc := t.unit.b*t.unit.b + 4*t.unit.c*(th/x-t.unit.a)
 	if !(disc > 0) {
@@ -110,11 +113,12 @@ func (z *Solver) scanTurn(t *turning, p float64, best, v, m *float64, by *SetBy)
 	a := p
 	_, _, fa := t.at(a)
 	for i := range t.f.table.node {
-		b := t.f.table.node[i].j
+		g := &t.f.table.node[i]
+		b := g.j
 		if b <= p*(1+1e-9) {
 			continue
 		}
-		v2, m2, fb := t.at(b)
+		v2, m2, fb := t.of(t.f.atNode(g))
 		if fa > 0 && fb <= 0 {
 			t.improve(a, fa, b, fb, best, v, m, by)
 		}

@@ -84,7 +84,7 @@ func (w *twin) thrust(v, most float64) float64 {
 	}
 	n := bisect(0, 1e4, func(n float64) float64 {
 		_, _, cp, _ := w.table.at(v / (n * d))
-		q := rho * n * n * d*d*d*d*d * cp / (2 * math.Pi)
+		q := rho * n * n * d * d * d * d * d * cp / (2 * math.Pi)
 		return max(q/torque, 2*math.Pi*q*n/shaft) - 1
 	})
 	n = min(n, most)
@@ -130,10 +130,10 @@ func (w *twin) shaftFor(v, t float64) float64 {
 	n := bisect(0, 1e5, func(n float64) float64 { return w.thrustOfRevs(v, n) - t })
 	if p.Kind == FixedPitch {
 		j2 := v * v / (n * n * d * d)
-		return rho * n * n * n * d*d*d*d*d * (p.PowerCoefficientStatic + p.PowerCoefficientSlope*j2)
+		return rho * n * n * n * d * d * d * d * d * (p.PowerCoefficientStatic + p.PowerCoefficientSlope*j2)
 	}
 	_, _, cp, _ := w.table.at(v / (n * d))
-	return rho * n * n * n * d*d*d*d*d * cp
+	return rho * n * n * n * d * d * d * d * d * cp
 }
 
 const twinNodes = 240
