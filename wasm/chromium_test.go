@@ -170,9 +170,9 @@ func (b *tab) do(steps ...chromedp.Action[chromedp.Void]) {
 }
 
 // eval evaluates an expression in the page.
-func eval[T any](b *tab, expression string) T {
+func eval[T any](b *tab, expression string, options ...chromedp.EvaluateOption) T {
 	b.t.Helper()
-	v, err := chromedp.Run(b.ctx, chromedp.Evaluate[T](expression))
+	v, err := chromedp.Run(b.ctx, chromedp.Evaluate[T](expression, options...))
 	if err != nil {
 		b.t.Fatalf("%s: %v", expression, err)
 	}
