@@ -68,7 +68,9 @@ func New(scale float64) *Atlas {
 		a.glyphs[s] = make([]Glyph, font.Count())
 		f := newFit(s, a.Scale)
 		for i := range a.glyphs[s] {
-			g := f.bounds(shapes.of(s.Weight(), i))
+			segs := shapes.of(s.Weight(), i)
+			f.take(i, segs)
+			g := f.bounds(segs)
 			a.glyphs[s][i] = g
 			if g.W > 0 {
 				jobs = append(jobs, job{s, i, g.H})
@@ -103,7 +105,9 @@ func New(scale float64) *Atlas {
 		f := newFit(s, a.Scale)
 		for i, g := range a.glyphs[s] {
 			if g.W > 0 {
-				f.draw(&z, shapes.of(s.Weight(), i), g, a.Image)
+				segs := shapes.of(s.Weight(), i)
+				f.take(i, segs)
+				f.draw(&z, segs, g, a.Image)
 			}
 		}
 	}

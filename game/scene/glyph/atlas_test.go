@@ -99,6 +99,35 @@ func TestRowsAreHard(t *testing.T) {
 	}
 }
 
+// A minus is never faint: each bar of the signs made of bars has a row of full cover, and none half covered beside it.
+func TestSignsAreClear(t *testing.T) {
+	for _, scale := range []float64{1, 1.25, 1.5, 2, 3} {
+		a := New(scale)
+		for s := range scene.StyleCount {
+			for r, want := range map[rune]int{'−': 1, '-': 1, '–': 1, '—': 1, '=': 2, '±': 2, '+': 1} {
+				g, _ := a.Lookup(s, r)
+				var rows []uint8 // cover along the left part of the sign, where only bars are
+				for y := range int(g.H) {
+					rows = append(rows, a.Image.AlphaAt(int(g.X)+int(g.W)/4, int(g.Y)+y).A)
+				}
+				bars, on := 0, false
+				for _, v := range rows {
+					if v > 5 && v < 250 {
+						t.Fatalf("scale %g style %d %q: rows %v", scale, s, r, rows)
+					}
+					if v >= 250 && !on {
+						bars++
+					}
+					on = v >= 250
+				}
+				if bars != want {
+					t.Errorf("scale %g style %d %q: %d bars in %v", scale, s, r, bars, rows)
+				}
+			}
+		}
+	}
+}
+
 // Digits advance alike, whole pixels at whole scales.
 func TestAdvances(t *testing.T) {
 	for _, scale := range []float64{1, 2, 3} {

@@ -36,6 +36,7 @@ func (s *shapes) of(w font.Weight, index int) []font.Segment {
 type fit struct {
 	scale  float64 // device pixels per font unit
 	xh, ch float64 // the two heights after fitting, device pixels
+	bars   bars    // of a sign made of bars, in place of the two heights
 }
 
 func newFit(s scene.Style, scale float64) fit {
@@ -43,10 +44,13 @@ func newFit(s scene.Style, scale float64) fit {
 	return fit{scale: k, xh: math.Round(font.XHeight * k), ch: math.Round(font.CapHeight * k)}
 }
 
-func (f fit) x(u float64) float64 { return u * f.scale }
+func (f *fit) x(u float64) float64 { return u * f.scale }
 
 // y is downwards, 0 on the baseline.
-func (f fit) y(u float64) float64 {
+func (f *fit) y(u float64) float64 {
+	if f.bars.n > 0 {
+		return -f.bars.y(u, f.scale)
+	}
 	switch {
 	case u <= 0:
 		return -u * f.scale
@@ -59,7 +63,7 @@ func (f fit) y(u float64) float64 {
 }
 
 // bounds is a glyph without its place in the atlas: the pixels that the outline may touch.
-func (f fit) bounds(segs []font.Segment) Glyph {
+func (f *fit) bounds(segs []font.Segment) Glyph {
 	if len(segs) == 0 {
 		return Glyph{}
 	}
@@ -80,7 +84,7 @@ func (f fit) bounds(segs []font.Segment) Glyph {
 }
 
 // draw rasterises an outline into its place.
-func (f fit) draw(z *cover.Rasterizer, segs []font.Segment, g Glyph, dst *image.Alpha) {
+func (f *fit) draw(z *cover.Rasterizer, segs []font.Segment, g Glyph, dst *image.Alpha) {
 	z.Begin(image.Rect(0, 0, int(g.W), int(g.H)))
 	ox, oy := -float64(g.Left), -float64(g.Top)
 	var px, py, sx, sy float64
