@@ -98,10 +98,14 @@ func (a *App) presentCase() *casefile.Case {
 	return c
 }
 
-// share copies the link that opens this case.
+// share copies the link that opens this case, or its fragment alone where the program has no address.
 func (a *App) share() {
 	a.cancelDrags()
-	a.host.Copy("link", a.host.LinkBase()+"#case="+a.presentCase().Fragment())
+	text := a.presentCase().Fragment()
+	if base := a.host.LinkBase(); base != "" {
+		text = base + "#case=" + text
+	}
+	a.host.Copy("link", text)
 }
 
 // save offers the case file.
