@@ -1,6 +1,6 @@
 // Command levelspan-window is the program in a window of its own. It opens the case file named as its argument, or
 // one dropped on the window, and saves to the file that it opened. Without a display it says so in one line and ends
-// with 2: see game/display.
+// with 2: see game/display/need.
 package main
 
 import (
@@ -11,7 +11,8 @@ import (
 
 	"levelspan/game"
 	"levelspan/game/app"
-	_ "levelspan/game/display" // must be there before the window
+	"levelspan/game/desktop"
+	_ "levelspan/game/display/need" // ends the program before the window can panic
 	"levelspan/game/scene"
 )
 
@@ -29,14 +30,14 @@ func doMain(args []string, out, errs io.Writer) int {
 	if done {
 		return code
 	}
-	h := newHost(path, version)
+	h := desktop.New(path, version, game.Wake)
 	if path != "" {
 		data, err := os.ReadFile(path)
 		if err != nil {
 			fmt.Fprintln(errs, "levelspan-window:", err)
 			return 2
 		}
-		h.arrived(app.Opened{Name: path, Data: data})
+		h.Arrived(app.Opened{Name: path, Data: data})
 	}
 	w := &window{host: h, app: app.New(h, nil), start: time.Now()}
 	surface := game.NewSurface(w.frame, func(why string) { fmt.Fprintln(errs, "levelspan-window: stopped:", why) })
@@ -67,7 +68,7 @@ func parse(args []string, out, errs io.Writer) (path string, code int, done bool
 
 // window is what lies between the surface and the program.
 type window struct {
-	host   *host
+	host   *desktop.Host
 	app    *app.App
 	reader game.Reader
 	input  app.Input
@@ -84,7 +85,7 @@ func (w *window) frame(width, height, scale float64) *scene.Scene {
 	in.Width, in.Height, in.Scale, in.Now = width, height, scale, time.Since(w.start)
 	in.Events, in.Opened, in.Notices, in.Failures = in.Events[:0], in.Opened[:0], in.Notices[:0], in.Failures[:0]
 	held := w.reader.Read(in, scale, in.Now)
-	w.host.take(in)
+	w.host.Take(in)
 	changed := w.app.Step(*in)
 	pause := w.app.Wake()
 	if held && (pause < 0 || pause > keyPace) {

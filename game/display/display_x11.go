@@ -4,15 +4,10 @@ package display
 
 import "syscall"
 
-func init() {
-	if why := missing(syscall.Getenv, reachable); why != "" {
-		text := "levelspan-window: " + why + "; the command without a window is: levelspan limits CASE.json\n"
-		syscall.Write(2, []byte(text))
-		syscall.Exit(2)
-	}
-}
+// Missing says in a few words why no window can be opened, "" if one can.
+func Missing() string { return missing(syscall.Getenv, reachable) }
 
-// missing says why no window can be opened, "" if one can. The window is an X11 one, also under Wayland, where
+// missing is Missing in a given environment. The window is an X11 one, also under Wayland, where
 // DISPLAY names the bridge.
 func missing(getenv func(string) (string, bool), reachable func(path string) bool) string {
 	name, _ := getenv("DISPLAY")

@@ -1,4 +1,6 @@
-package main
+// Package desktop is the program's outside on a desktop: clipboard, files, and what comes back from them. It knows no
+// window, so that it is tested without a display.
+package desktop
 
 import (
 	"errors"
@@ -11,12 +13,11 @@ import (
 	"sync"
 	"time"
 
-	"levelspan/game"
 	"levelspan/game/app"
 )
 
-// host is the program's outside on a desktop: see app.Host. What comes back waits here until the next frame.
-type host struct {
+// Host is an app.Host. What comes back waits here until Take. Make it with New.
+type Host struct {
 	version string
 	clip    func(text string) error
 	wake    func()
@@ -28,20 +29,22 @@ type host struct {
 	failures []string
 }
 
-func newHost(path, version string) *host {
-	return &host{path: path, version: version, clip: clip, wake: game.Wake}
+// New makes a host for a case that came from the file path ("" for none). It calls wake, from any goroutine, when
+// there is something to Take.
+func New(path, version string, wake func()) *Host {
+	return &Host{path: path, version: version, clip: clip, wake: wake}
 }
 
-// arrived queues a file for the next frame.
-func (h *host) arrived(o app.Opened) {
+// Arrived queues a file for the next frame.
+func (h *Host) Arrived(o app.Opened) {
 	h.mu.Lock()
 	defer h.mu.Unlock()
 	h.opened = append(h.opened, o)
 }
 
-// take moves what waits into the input. A file dropped on the window becomes the one that a save does not touch: only
+// Take moves what waits into the input. A file dropped on the window becomes the one that a save does not touch: only
 // its name is known, not its folder.
-func (h *host) take(in *app.Input) {
+func (h *Host) Take(in *app.Input) {
 	h.mu.Lock()
 	defer h.mu.Unlock()
 	if len(in.Opened) > 0 {
@@ -53,7 +56,7 @@ func (h *host) take(in *app.Input) {
 	h.opened, h.notices, h.failures = nil, nil, nil
 }
 
-func (h *host) say(notice string, err error) {
+func (h *Host) say(notice string, err error) {
 	h.mu.Lock()
 	if err != nil {
 		h.failures = append(h.failures, err.Error())
@@ -65,7 +68,7 @@ func (h *host) say(notice string, err error) {
 }
 
 // Copy puts text on the clipboard by the desktop's own command, or into a file where there is none.
-func (h *host) Copy(what, text string) {
+func (h *Host) Copy(what, text string) {
 	go func() {
 		err := h.clip(text)
 		if err == nil {
@@ -82,13 +85,13 @@ func (h *host) Copy(what, text string) {
 }
 
 // OpenFile tells how a file is opened: there is no dialog without a toolkit.
-func (h *host) OpenFile() {
+func (h *Host) OpenFile() {
 	h.say("Drop a case file on this window, or start levelspan-window CASE.json", nil)
 }
 
 // SaveFile writes to the file that the case was opened from, or to name in the current folder, under a new name if
 // there is one of that name already. The old content stays whole until the new is.
-func (h *host) SaveFile(name, mime string, data []byte) {
+func (h *Host) SaveFile(name, mime string, data []byte) {
 	data = append([]byte(nil), data...)
 	h.mu.Lock()
 	path := h.path
@@ -112,10 +115,10 @@ func (h *host) SaveFile(name, mime string, data []byte) {
 }
 
 // LinkBase is empty: a window has no address, so a link is its fragment alone.
-func (h *host) LinkBase() string { return "" }
+func (h *Host) LinkBase() string { return "" }
 
 // Version is the program's version.
-func (h *host) Version() string { return h.version }
+func (h *Host) Version() string { return h.version }
 
 // free is name, or name with the first number that is not taken.
 func free(name string) string {
