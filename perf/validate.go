@@ -6,6 +6,8 @@ import "math"
 const (
 	maximumRows           = 200
 	maximumConfigurations = 50
+	// leastStaticThrust is the least thrust coefficient of a table's first row; real ones are hundreds of times greater.
+	leastStaticThrust = 1e-4
 )
 
 // Validate reports every fault of the aeroplane as joined *DomainError, or nil. Faults takes them apart.
@@ -168,8 +170,8 @@ func (p *Propeller) validateTable(f *faults, g *propellerTable) {
 	for i := range t {
 		j, ct, cp := t[i].AdvanceRatio, t[i].ThrustCoefficient, t[i].PowerCoefficient
 		if i == 0 {
-			if !(ct > 0) {
-				f.add(rowKey(list, 0, "ThrustCoefficient"), QuantityThrustCoefficient, ct, 0, QuantityThrustCoefficient.Domain().Max, "the first row must give thrust")
+			if !(ct >= leastStaticThrust) {
+				f.add(rowKey(list, 0, "ThrustCoefficient"), QuantityThrustCoefficient, ct, leastStaticThrust, QuantityThrustCoefficient.Domain().Max, "the first row must give thrust")
 			}
 			continue
 		}
