@@ -184,6 +184,7 @@ func (a *App) undo() {
 	if what := a.doc.undo(); what != "" {
 		a.notify("Undone: " + what)
 	}
+	a.units = a.unitsNow()
 	a.dirty = true
 }
 
@@ -193,6 +194,7 @@ func (a *App) redo() {
 	if what := a.doc.redo(); what != "" {
 		a.notify("Redone: " + what)
 	}
+	a.units = a.unitsNow()
 	a.dirty = true
 }
 

@@ -2,6 +2,7 @@ package app
 
 import (
 	"bytes"
+	"reflect"
 
 	"levelspan/perf/casefile"
 )
@@ -74,6 +75,9 @@ func (d *document) commitRun(what, run string, next *casefile.Case) {
 			d.revision++
 		}
 		return
+	}
+	if len(next.Runs) > 0 && reflect.DeepEqual(next.Runs, d.committed.Runs) {
+		next.Runs = d.committed.Runs // committed cases are not changed in place: many steps can share many runs
 	}
 	if run == "" || run != d.run || len(d.past) == 0 {
 		d.past = append(d.past, step{what, d.committed})

@@ -64,7 +64,7 @@ func layoutFor(w, h, top, right, bottom, left float64) layout {
 	if l.format == phone && !l.low {
 		l.tabs, rest = ui.CutTop(rest, 48)
 	}
-	l.body, l.row = rest, 50
+	l.body, l.row = rest, leastRow
 	switch l.format {
 	case landscape:
 		l.wide(rest)
@@ -78,9 +78,6 @@ func layoutFor(w, h, top, right, bottom, left float64) layout {
 func (l *layout) wide(r scene.Rect) {
 	l.columns = 1
 	l.panel, r = ui.CutRight(r, clamp(0.266*r.W, 252, 460))
-	if l.panel.H < 800 {
-		l.row = 47
-	}
 	strip := 76.0
 	if l.low {
 		strip = 44

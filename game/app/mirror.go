@@ -24,6 +24,9 @@ func (a *App) describe() {
 
 // summary is the day in one sentence.
 func (a *App) summary() string {
+	if a.solved.fault != "" {
+		return "No figures for this case: " + a.solved.fault
+	}
 	ans, u := &a.solved.answer, &a.units
 	where := " at " + u.MassWhole(a.solved.cond.Mass).String() + " and a density altitude of " + u.AltitudeCoarse(a.solved.cond.Air.DensityAltitude).String() + "."
 	slow, fast := &ans.Limits[perf.SlowestLevel], &ans.Limits[perf.FastestLevel]

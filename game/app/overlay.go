@@ -98,5 +98,6 @@ func (a *App) drawNotice(f *ui.Frame) {
 		b.Draw(f, scene.Rect{X: s.X + (s.W-w)/2, Y: s.Y + s.H - h - 40, W: w, H: h})
 		return
 	}
-	ui.Toast(f, s, a.view.notice)
+	under, _ := ui.CutTop(s, a.layout.header.H+84) // under the header: cautions and figures stay in sight
+	ui.Toast(f, under, a.view.notice)
 }

@@ -13,6 +13,8 @@ import (
 // The measures of the panel, logical pixels.
 const (
 	panelHead    = 50.0
+	leastRow     = 47.0
+	mostRow      = 54.0
 	panelFoot    = 30.0 // the advisory line
 	panelLine    = 28.0
 	panelSection = 8.0
@@ -37,6 +39,9 @@ func (a *App) drawPanel(f *ui.Frame) {
 	head, r := ui.CutTop(r, headHeight)
 	a.drawPanelHead(f, ui.Trim(head, 0, a.layout.margin, 0, a.layout.margin))
 	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
+	if per := (len(a.rows) + a.layout.columns - 1) / a.layout.columns; per > 0 { // rows use the height that there is
+		a.layout.row = clamp(math.Floor((r.H-a.factsHeight())/float64(per)), leastRow, mostRow)
+	}
 	height := a.limitsHeight() + a.factsHeight()
 	in.Y = f.BeginScroll("panel", "Speeds", "", r, &a.view.panel, height)
 	a.drawLimits(f, in)

@@ -161,6 +161,7 @@ func (r *ranges) refresh(d *document, kind string, scratch *perf.Solver) {
 	cond.Bank, cond.PowerFraction, cond.Headwind, cond.ClimbGradient = 0, 1, 0, 0
 	r.altitude = altitudeRange(&aero, cond, scratch, c)
 	r.speed, r.power = curveRanges(&aero, cond, scratch, kind, r.altitude)
+	r.power.hi = math.Max(r.power.hi, 1.3*mostRequired(&aero, cond, scratch, r.mass, r.altitude))
 }
 
 func massRange(c *casefile.Case) span {
@@ -241,6 +242,25 @@ func curveRanges(aero *perf.Aeroplane, cond perf.Condition, scratch *perf.Solver
 		most = 1.1 * aero.Engine.RatedPower
 	}
 	return span{0.72 * slow, fast}, span{0, most * 1.08}
+}
+
+// mostRequired is what slow level flight takes at the far end of both rails: where none is possible, the curve of power
+// required is still to be seen.
+func mostRequired(aero *perf.Aeroplane, cond perf.Condition, scratch *perf.Solver, mass, altitude span) float64 {
+	air, err := perf.AirAtDensityAltitude(0.9 * altitude.hi)
+	if err != nil {
+		return 0
+	}
+	cond.Air, cond.Mass = air, mass.hi
+	var answer perf.Answer
+	if scratch.Solve(aero, &cond, &answer) != nil || !answer.Limits[perf.Stall].Applies || scratch.Prepare(aero, &cond) != nil {
+		return 0
+	}
+	p := scratch.PowerRequired(1.15 * answer.Limits[perf.Stall].TAS)
+	if math.IsNaN(p) || math.IsInf(p, 0) {
+		return 0
+	}
+	return p
 }
 
 func scratchPower(s *perf.Solver, aero *perf.Aeroplane, cond *perf.Condition, v perf.TAS) float64 {

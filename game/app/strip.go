@@ -2,6 +2,7 @@ package app
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"levelspan/game/scene"
@@ -16,15 +17,23 @@ func (a *App) cautions() []string {
 	if a.solved.fault != "" {
 		texts = append(texts, "These figures are stale: "+a.solved.fault)
 	}
-	for i, on := range a.solved.answer.Cautions {
-		c := perf.Caution(i)
-		if !on || c == perf.CautionAdvisory || c == perf.CautionNotModelled {
-			continue
+	on := &a.solved.answer.Cautions
+	for _, c := range graveCautions {
+		if on[c] {
+			texts = append(texts, c.Text())
 		}
-		texts = append(texts, c.Text())
+	}
+	for i := range on {
+		c := perf.Caution(i)
+		if on[i] && c != perf.CautionAdvisory && c != perf.CautionNotModelled && !slices.Contains(graveCautions[:], c) {
+			texts = append(texts, c.Text())
+		}
 	}
 	return texts
 }
+
+// graveCautions come first.
+var graveCautions = [...]perf.Caution{perf.CautionNoLevelFlight, perf.CautionClimbAboveNeverExceed, perf.CautionNearCeiling, perf.CautionAboveMaximumMass}
 
 // drawStrip draws the cautions under the chart; without any, the day in one sentence.
 func (a *App) drawStrip(f *ui.Frame) {
