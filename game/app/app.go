@@ -10,6 +10,7 @@ import (
 	"levelspan/perf"
 	"levelspan/perf/casefile"
 	"levelspan/perf/casefile/figure"
+	"levelspan/perf/casefile/report"
 )
 
 // App is the program. Make it with New.
@@ -36,7 +37,7 @@ type App struct {
 	mirror  Mirror
 	rows    []limitRow
 	facted  []factLine
-	order   []perf.Key
+	report  report.Report // the answer on the screen, in the words that the command uses too
 	chart   chart
 	dirty   bool
 	now     time.Duration

@@ -235,9 +235,9 @@ func (a *App) drawMarked(f *ui.Frame) {
 	line := [2]scene.Point{{X: x, Y: p.Y}, {X: x, Y: a.layout.band.Y + 20}}
 	f.Scene.StrokeDashed(line[:], 1.5, 5, 4, t.Accent)
 	a.dot(f, v, t.Accent)
-	text := limitSymbol(k, a.doc.current)
+	text := a.report.Symbol(k)
 	if text == "" {
-		text = limitName(k, a.doc.current)
+		text = a.report.Name(k)
 	}
 	text += " " + a.units.SpeedWhole(v).Number
 	w := scene.Measure(scene.SmallBold, text) + 14
@@ -355,7 +355,7 @@ func (a *App) shortfallWords() (head string, lines []string) {
 		v := a.solved.kindFromTAS(ans.ShortfallTAS, kind)
 		lines = append(lines, u.PowerFine(ans.Shortfall).String()+" short at the best speed, "+u.SpeedWhole(v).String()+" "+kind+".")
 	}
-	if text := allowanceText(u, &ans.Level, a.layout.compact); text != "" {
+	if text := a.allowanceText(&ans.Level, a.layout.compact); text != "" {
 		lines = append(lines, "Possible below "+text+".")
 	} else {
 		lines = append(lines, "No weight and no height in the model's range makes it possible.")

@@ -4,6 +4,7 @@ import (
 	"levelspan/game/scene"
 	"levelspan/game/ui"
 	"levelspan/perf/casefile/figure"
+	"levelspan/perf/casefile/report"
 )
 
 var (
@@ -39,6 +40,8 @@ func (a *App) draw() {
 	a.scene.Reset(w.width, w.height, w.scale, theme.Background)
 	f := &a.frame
 	f.Begin(&a.scene, theme, &a.router)
+	s := &a.solved
+	a.report = report.Report{Case: a.doc.current, Aeroplane: s.aero, Condition: s.cond, Answer: s.answer, Units: a.units}
 	a.limitRows()
 	a.mirror.Summary = a.summary()
 	a.mirror.Warnings = a.cautions()

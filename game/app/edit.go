@@ -135,7 +135,7 @@ func fillTypical(c *casefile.Case, fields fieldTable, prefix, kind string) {
 		if typical == 0 {
 			typical = f.Default
 		}
-		if *at == 0 && typical != 0 || *at < f.Min || *at > f.Max {
+		if *at < f.Min || *at > f.Max {
 			*at = typical
 		}
 	}

@@ -1,10 +1,9 @@
 package app
 
 import (
-	"sort"
-
 	"levelspan/perf"
 	"levelspan/perf/casefile/figure"
+	"levelspan/perf/casefile/report"
 )
 
 // limitRow is one limit as the panel and the mirror say it.
@@ -21,19 +20,10 @@ type limitRow struct {
 // limitRows is every limit that applies, in order of speed.
 func (a *App) limitRows() []limitRow {
 	ans, kind := &a.solved.answer, a.speedKind()
-	a.order = a.order[:0]
-	for k := perf.Key(0); k < perf.KeyCount; k++ {
-		if ans.Limits[k].Applies {
-			a.order = append(a.order, k)
-		}
-	}
-	sort.SliceStable(a.order, func(i, j int) bool {
-		return inKind(&ans.Limits[a.order[i]], kind) < inKind(&ans.Limits[a.order[j]], kind)
-	})
 	a.rows = a.rows[:0]
-	for _, k := range a.order {
+	for _, k := range report.Order(ans) {
 		l := &ans.Limits[k]
-		row := limitRow{key: k, name: limitName(k, a.doc.current), symbol: limitSymbol(k, a.doc.current), setBy: setByName(l.SetBy),
+		row := limitRow{key: k, name: a.report.Name(k), symbol: a.report.Symbol(k), setBy: a.report.SetBy(k),
 			value: a.units.SpeedWhole(inKind(l, kind)).Number}
 		row.second, row.aside = a.secondFigure(k, l)
 		a.rows = append(a.rows, row)
@@ -53,11 +43,11 @@ func (a *App) secondFigure(k perf.Key, l *perf.Limit) (second, aside string) {
 		if a.solved.cond.Bank > 0 {
 			aside = "in " + figure.Degrees(a.solved.cond.Bank).String() + " bank"
 		}
-		if v, ok := a.solved.stallAt(bank, a.speedKind()); ok && a.solved.cond.Bank < bank {
-			second = figure.Degrees(bank).String() + " bank " + u.SpeedWhole(v).Number
+		if l, ok := a.report.StallAtBank(bank); ok {
+			second = figure.Degrees(bank).String() + " bank " + u.SpeedWhole(inKind(&l, a.speedKind())).Number
 		}
 	case perf.SlowestLevel, perf.FastestLevel:
-		second = "set by " + setByName(l.SetBy)
+		second = "set by " + a.report.SetBy(k)
 	case perf.LeastPower:
 		aside = "endurance"
 		second = u.PowerFine(l.PowerRequired).String()
@@ -96,10 +86,18 @@ func (a *App) secondFigure(k perf.Key, l *perf.Limit) (second, aside string) {
 	if l.SetBy != perf.SetByOptimum {
 		switch k {
 		case perf.LeastPower, perf.SteepestClimb, perf.FastestClimb, perf.BestGlide, perf.BestRange, perf.Carson:
-			second += ", at the " + setByName(l.SetBy)
+			second += ", at the " + a.report.SetBy(k)
 		}
 	}
 	return second, aside
+}
+
+// aboveMaximum says of an allowed mass that the aeroplane's papers do not allow it.
+func (a *App) aboveMaximum(mass float64) string {
+	if most := a.solved.aero.MaximumMass; mass > most {
+		return " (above the maximum, " + a.units.MassWhole(most).String() + ")"
+	}
+	return ""
 }
 
 // facts are the figures beside the limits: ceilings, turn, allowances and the air.
@@ -121,7 +119,7 @@ func (a *App) facts() []Fact {
 	}
 	allowance := func(key, name string, w *perf.Allowance) {
 		if w.MassApplies {
-			add(key+"_mass", name+" possible below", u.MassWhole(w.Mass).String(), w.Mass)
+			add(key+"_mass", name+" possible below", u.MassWhole(w.Mass).String()+a.aboveMaximum(w.Mass), w.Mass)
 		}
 		if w.AltitudeApplies {
 			add(key+"_density_altitude", name+" possible below, density altitude", u.AltitudeCoarse(w.DensityAltitude).String(), w.DensityAltitude)

@@ -39,6 +39,6 @@ func (a *App) summary() string {
 		return s
 	}
 	kind := a.speedKind()
-	return "Level flight from " + u.SpeedWhole(inKind(slow, kind)).Number + " (" + setByName(slow.SetBy) + ") to " +
-		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + setByName(fast.SetBy) + ")" + where
+	return "Level flight from " + u.SpeedWhole(inKind(slow, kind)).Number + " (" + a.report.SetBy(perf.SlowestLevel) + ") to " +
+		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + a.report.SetBy(perf.FastestLevel) + ")" + where
 }

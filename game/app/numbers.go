@@ -32,20 +32,21 @@ func (a *App) fuelText() string {
 	return "all of the charge"
 }
 
-// allowanceText is the inverse answer in words: "912 kg, or below 17 400 ft density altitude"; "" where there is none.
-func allowanceText(u *figure.Units, a *perf.Allowance, short bool) string {
-	s := ""
-	if a.MassApplies {
-		s = u.MassWhole(a.Mass).String()
+// allowanceText is the inverse answer in words: "912 kg, or below 17 400 ft density altitude"; "" where there is none. A
+// mass above the maximum is said to be one.
+func (a *App) allowanceText(w *perf.Allowance, short bool) string {
+	u, s := &a.units, ""
+	if w.MassApplies {
+		s = u.MassWhole(w.Mass).String() + a.aboveMaximum(w.Mass)
 	}
-	if a.AltitudeApplies {
+	if w.AltitudeApplies {
 		switch {
 		case short && s != "":
 			s += " or "
 		case s != "":
 			s += ", or below "
 		}
-		s += u.AltitudeCoarse(a.DensityAltitude).String()
+		s += u.AltitudeCoarse(w.DensityAltitude).String()
 		if !short {
 			s += " density altitude"
 		}

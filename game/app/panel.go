@@ -236,7 +236,10 @@ func (a *App) factLines() []factLine {
 	ceiling("Absolute ceiling", &ans.Absolute)
 	allowance := func(name string, w *perf.Allowance) {
 		value := ""
-		if w.MassApplies {
+		switch most := a.solved.aero.MaximumMass; {
+		case w.MassApplies && w.Mass > most: // what the papers do not allow is not offered
+			value = "max weight"
+		case w.MassApplies:
 			value = u.MassWhole(w.Mass).String()
 		}
 		if w.AltitudeApplies {

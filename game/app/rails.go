@@ -261,8 +261,8 @@ func (a *App) bandRail(t *ui.Theme) ui.Rail {
 	if slow.Applies && fast.Applies && ans.Outcome == perf.LevelFlight {
 		lo, hi := shown(m, inKind(slow, kind)), shown(m, inKind(fast, kind))
 		rail.Zones = append(rail.Zones, ui.RailZone{From: lo, To: hi, Color: t.Good})
-		rail.Marks = append(rail.Marks, ui.RailMark{At: lo, Text: setByName(slow.SetBy), Color: t.Ink, Bold: true},
-			ui.RailMark{At: hi, Text: setByName(fast.SetBy), Color: t.Ink, Bold: true})
+		rail.Marks = append(rail.Marks, ui.RailMark{At: lo, Text: a.report.SetBy(perf.SlowestLevel), Color: t.Ink, Bold: true},
+			ui.RailMark{At: hi, Text: a.report.SetBy(perf.FastestLevel), Color: t.Ink, Bold: true})
 	} else if s := &ans.Limits[perf.Stall]; s.Applies {
 		rail.Marks = append(rail.Marks, ui.RailMark{At: shown(m, inKind(s, kind)), Text: "stall", Color: t.Ink, Bold: true})
 	}
@@ -273,7 +273,7 @@ func (a *App) bandRail(t *ui.Theme) ui.Rail {
 	}
 	for _, k := range [...]perf.Key{perf.FastestClimb, perf.SteepestClimb} {
 		if l := &ans.Limits[k]; l.Applies {
-			rail.Marks = append(rail.Marks, ui.RailMark{At: shown(m, inKind(l, kind)), Text: limitSymbol(k, a.doc.current), Color: t.Ink, Bold: true})
+			rail.Marks = append(rail.Marks, ui.RailMark{At: shown(m, inKind(l, kind)), Text: a.report.Symbol(k), Color: t.Ink, Bold: true})
 		}
 	}
 	return rail

@@ -2,6 +2,7 @@ package app
 
 import (
 	"math"
+	"strings"
 	"testing"
 
 	"levelspan/game/ui"
@@ -418,5 +419,46 @@ func TestUnitsChangeWhatIsShownOnly(t *testing.T) {
 	}
 	if p.row("fastest_level").ValueText != before.ValueText || p.app.doc.nextUndo() != "" {
 		t.Error("six undos do not take six units back")
+	}
+}
+
+func TestRowsAreInOrderOfSpeed(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	for _, mass := range []float64{500, 650, 800} {
+		p.setSlider(handleMass, mass)
+		last := 0.0
+		for _, r := range p.app.Mirror().Rows {
+			if r.CASMps < last {
+				t.Errorf("at %g kg %s stands above a slower one", mass, r.Key)
+			}
+			last = r.CASMps
+		}
+	}
+}
+
+func TestStallInBankIsTheStallOfThatBank(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	for _, bank := range []float64{0, 20, 50} {
+		c := p.app.Case().Clone()
+		c.Today.BankDeg = bank
+		p.step(Opened{Data: c.Marshal()})
+		at := 45.0
+		if bank > 44 {
+			at = 60
+		}
+		aero, cond, err := c.Model()
+		if err != nil {
+			t.Fatal(err)
+		}
+		cond.Bank = at * perf.Degree
+		var solver perf.Solver
+		var want perf.Answer
+		if err := solver.Solve(&aero, &cond, &want); err != nil {
+			t.Fatal(err)
+		}
+		got := float64(want.Limits[perf.Stall].CAS)
+		if text := p.app.units.SpeedWhole(got).Number; !strings.HasSuffix(p.row("stall").SecondText, "bank "+text) {
+			t.Errorf("flown at %g°: the row says %q, not %s", bank, p.row("stall").SecondText, text)
+		}
 	}
 }

@@ -116,17 +116,6 @@ func (s *solved) sampleCurves(kind string, over span) {
 	}
 }
 
-// stallAt is the stall speed in the chosen kind in another bank (rad): at one lift coefficient the speed goes with the root
-// of the load factor.
-func (s *solved) stallAt(bank float64, kind string) (speed float64, ok bool) {
-	l := &s.answer.Limits[perf.Stall]
-	if !l.Applies {
-		return 0, false
-	}
-	tas := float64(l.TAS) * math.Sqrt(math.Cos(s.cond.Bank)/math.Cos(bank))
-	return s.kindFromTAS(perf.TAS(tas), kind), true
-}
-
 // ranges are what the axes and rails span. They depend on the aeroplane, on the chosen kind of speed, and on values of today
 // that lie outside, never on a drag inside them: so no scale moves under a finger.
 type ranges struct {
