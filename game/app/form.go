@@ -221,6 +221,10 @@ func (b *formBuilder) aeroplaneRows() []formRow {
 	return b.rows
 }
 
+// engineLabels are shorter or plainer than the field's name.
+var engineLabels = map[string]string{"rated_rpm": "Propeller speed at rated power", "maximum_rpm": "Red line", "drop_off_constant": "Drop-off constant, c",
+	"lapse_exponent": "Lapse exponent, x", "thermal_power_w": "Thermal power at sea level"}
+
 func (b *formBuilder) engineRows() {
 	e := &b.c.Aeroplane.Engine
 	b.heading("Engine")
@@ -235,7 +239,7 @@ func (b *formBuilder) engineRows() {
 		if f.Kind == casefile.KindChoice {
 			b.choice(path, "Full-throttle power falls with")
 		} else {
-			b.number(path, "")
+			b.number(path, engineLabels[key])
 		}
 	}
 	if e.Kind != casefile.Electric {

@@ -5,6 +5,7 @@ import (
 	"strconv"
 	"time"
 
+	"levelspan/game/scene"
 	"levelspan/game/ui"
 	"levelspan/perf"
 	"levelspan/perf/casefile"
@@ -271,10 +272,46 @@ func (a *App) bandRail(t *ui.Theme) ui.Rail {
 		rail.Zones = append(rail.Zones, ui.RailZone{From: at, To: rail.Max, Color: ui.Fade(t.Bad, 0.8)})
 		rail.Marks = append(rail.Marks, ui.RailMark{At: at, Text: "VNE", Color: t.Bad, Bold: true})
 	}
+	scale := rail.Scale(a.layout.band)
+	ends := a.endRoom(&rail, scale)
+	if ends.lo > ends.hi && len(rail.Marks) > 2 { // the red stretch alone must do
+		rail.Marks = rail.Marks[:2]
+		ends = a.endRoom(&rail, scale)
+	}
 	for _, k := range [...]perf.Key{perf.FastestClimb, perf.SteepestClimb} {
-		if l := &ans.Limits[k]; l.Applies {
-			rail.Marks = append(rail.Marks, ui.RailMark{At: shown(m, inKind(l, kind)), Text: a.report.Symbol(k), Color: t.Ink, Bold: true})
+		l := &ans.Limits[k]
+		if !l.Applies {
+			continue
+		}
+		at := shown(m, inKind(l, kind))
+		if x := scale.Pos(at); x > ends.lo && x < ends.hi {
+			rail.Marks = append(rail.Marks, ui.RailMark{At: at, Text: a.report.Symbol(k), Color: t.Ink, Bold: true})
 		}
 	}
 	return rail
+}
+
+// endRoom is the stretch of the speed rail, in pixels, that the names of the band's ends leave to other marks: what sets the
+// ends is always said. A name stands inside the band where it has no room outside.
+func (a *App) endRoom(rail *ui.Rail, scale ui.Scale) span {
+	room := span{math.Inf(-1), math.Inf(1)}
+	if len(rail.Zones) == 0 || len(rail.Marks) < 2 || rail.Zones[0].From != rail.Marks[0].At {
+		return room
+	}
+	lo, hi := &rail.Marks[0], &rail.Marks[1]
+	const gap = 8
+	w := scene.Measure(scene.SmallBold, lo.Text) + gap
+	if x := scale.Pos(lo.At); x-w < scale.P0 {
+		room.lo = x + w
+	}
+	w = scene.Measure(scene.SmallBold, hi.Text) + gap
+	x := scale.Pos(hi.At)
+	beyond := scale.P1
+	if len(rail.Marks) > 2 { // the never-exceed speed
+		beyond = math.Min(beyond, scale.Pos(rail.Marks[2].At))
+	}
+	if x+w > beyond {
+		room.hi = x - w
+	}
+	return room
 }

@@ -422,6 +422,32 @@ func TestUnitsChangeWhatIsShownOnly(t *testing.T) {
 	}
 }
 
+func TestBothEndsOfTheBandAreNamed(t *testing.T) {
+	for _, w := range windows {
+		p := newPilotIn(t, w)
+		for _, at := range [][2]float64{{480, 0}, {760, 1200}, {800, 3500}, {800, 4900}, {800, 5200}} {
+			p.setSlider(handleMass, at[0])
+			p.setSlider(handleAltitude, at[1])
+			p.in.Now += noticeTime
+			p.step()
+			if p.app.solved.answer.Outcome != perf.LevelFlight {
+				continue
+			}
+			said := map[string]bool{}
+			for _, x := range texts(p.app.Scene(), 0) {
+				if b := p.app.layout.band; x.box.Y > b.Y-4 && x.box.Y < b.Y+b.H && x.box.X > b.X-60 && x.box.X < b.X+b.W {
+					said[x.text] = true
+				}
+			}
+			for _, k := range []perf.Key{perf.SlowestLevel, perf.FastestLevel} {
+				if name := p.app.report.SetBy(k); !said[name] {
+					t.Errorf("%gx%g at %g kg, %g m: the band does not say %q: %v", w.Width, w.Height, at[0], at[1], name, said)
+				}
+			}
+		}
+	}
+}
+
 func TestRowsAreInOrderOfSpeed(t *testing.T) {
 	p := newPilot(t, 1280, 800)
 	for _, mass := range []float64{500, 650, 800} {
