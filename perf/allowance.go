@@ -66,7 +66,8 @@ func (f *flight) leastShaft(d *drag) float64 {
 func (z *Solver) tableRatio(d *drag) float64 {
 	f := &z.now
 	start := f.table.advanceOf(d.at(f.stall) / (f.rho * f.dia * f.dia * f.stall * f.stall))
-	j1, r1 := start, f.massRatio(d, start)
+	j1 := start
+	r1, _ := f.massRatio(d, start)
 	best := r1
 	j0, r0 := j1, 0.0
 	nodes := f.table.node
@@ -77,10 +78,10 @@ func (z *Solver) tableRatio(d *drag) float64 {
 			if j2 = g.j; j2 <= start*(1+1e-9) {
 				continue
 			}
-			r2 = f.ratioAt(d, j2, g.tau, 1/(g.r2*g.r2))
+			r2, _ = f.ratioAt(d, j2, g.tau, 1/(g.r2*g.r2))
 		} else {
 			j2 = j1 * 1.5
-			r2 = f.massRatio(d, j2)
+			r2, _ = f.massRatio(d, j2)
 		}
 		if r1 >= r2 && r1 >= r0 {
 			best = max(best, f.refineRatio(d, j0, j2))
@@ -93,39 +94,55 @@ func (z *Solver) tableRatio(d *drag) float64 {
 	return best
 }
 
-// massRatio is how many times today's mass the propeller could carry at an advance ratio; 0 where d nowhere asks for it.
-func (f *flight) massRatio(d *drag, j float64) float64 {
+// massRatio is how many times today's mass the propeller could carry at an advance ratio, and whether it is the power that limits; 0 where d
+// nowhere asks for it.
+func (f *flight) massRatio(d *drag, j float64) (float64, bool) {
 	ct, _, cp, _ := f.table.at(j)
 	return f.ratioAt(d, j, ct/(j*j), cp)
 }
 
-func (f *flight) ratioAt(d *drag, j, tau, cp float64) float64 {
+func (f *flight) ratioAt(d *drag, j, tau, cp float64) (ratio float64, byPower bool) {
 	// The thrust tau rho V^2 D^2 is d.at(V): a x^2 - b x + c = 0 with x = V^2. x = 2 c/(b + sqrt(b^2 - 4 a c)) is the slower where a > 0 and
 	// the only one where a < 0.
 	a := d.a - tau*f.rho*f.dia*f.dia
 	disc := d.b*d.b - 4*a*d.c
 	if !(disc >= 0) {
-		return 0
+		return 0, false
 	}
 	q := d.b + math.Sqrt(disc)
 	if !(q > 0) {
-		return 0
+		return 0, false
 	}
 	x := max(2*d.c/q, f.stall*f.stall)
 	torque := f.rhoD4 / (f.dia * 2 * math.Pi) * cp * x / (j * j)
 	power := 2 * math.Pi * torque * math.Sqrt(x) / (j * f.dia)
 	r, p := f.torque0/torque, f.shaft/power
 	if p*p < r*r*r {
-		return math.Cbrt(p * p)
+		return math.Cbrt(p * p), true
 	}
-	return r
+	return r, false
 }
 
+// refineRatio is the greatest ratio between two advance ratios. Where one of torque and power sets it all along, a place known to a part in
+// 1e5 gives the value to one in 1e10; where they change over it is a corner, and the place must be known as well as the value.
 func (f *flight) refineRatio(d *drag, a, b float64) float64 {
 	var m num.Minimum
-	m.Start(a, b, 0)
+	tol := 1e-5 * b
+	m.Start(a, b, tol)
 	for m.Next() {
-		m.Put(-f.massRatio(d, m.X))
+		r, _ := f.massRatio(d, m.X)
+		m.Put(-r)
+	}
+	lo, hi := max(a, m.X-2*tol), min(b, m.X+2*tol)
+	_, byLo := f.massRatio(d, lo)
+	_, byHi := f.massRatio(d, hi)
+	if byLo == byHi {
+		return -m.F
+	}
+	m.Start(lo, hi, 0)
+	for m.Next() {
+		r, _ := f.massRatio(d, m.X)
+		m.Put(-r)
 	}
 	return -m.F
 }

@@ -74,6 +74,10 @@ func (z *Solver) greatestHeight(target, here float64, gradient bool, above, ther
 			}
 			if here >= 0 && h < today && today < hi {
 				lo, flo = today, here
+				z.hump = z.now.param(z.vy)
+				if gradient {
+					z.hump = z.now.param(z.vx)
+				}
 				break
 			}
 			x := z.glance(h, target, gradient)
@@ -113,6 +117,7 @@ func (z *Solver) glance(h, target float64, gradient bool) float64 {
 	}
 	best, drag := math.Inf(-1), 0.0
 	first, at := -1, -1
+	z.hump = 0
 	aim := target * f.weight
 	for i := range f.table.node {
 		g := &f.table.node[i]
@@ -134,6 +139,9 @@ func (z *Solver) glance(h, target float64, gradient bool) float64 {
 			best, drag, at = x, d, i
 		}
 	}
+	if at >= 0 {
+		z.hump = f.table.node[at].j
+	}
 	// With the best at the first node the top may lie between it and the stall.
 	if x := best - aim; x >= 0 || at > first && x < -glanceMargin*drag {
 		return x / f.weight
@@ -141,8 +149,9 @@ func (z *Solver) glance(h, target float64, gradient bool) float64 {
 	return z.climbAt(h, target, gradient)
 }
 
-// tableHeight is the height in a bracket where a tabulated propeller's climb is the target. The advance ratio of the best climb is
-// carried from height to height and only nudged; where that has followed a lesser hump, the whole scan is done at every height.
+// tableHeight is the height in a bracket where a tabulated propeller's climb is the target. The advance ratio of the best climb, at
+// first the hump seen at the lower end, is carried from height to height and only nudged; where another hump might be the greater, the whole
+// scan is done at every height.
 func (z *Solver) tableHeight(lo, flo, hi, fhi, target float64, gradient bool) float64 {
 	of := ofPower
 	if gradient {
@@ -150,29 +159,18 @@ func (z *Solver) tableHeight(lo, flo, hi, fhi, target float64, gradient bool) fl
 	}
 	f := &z.high
 	z.highest = math.NaN()
-	s := z.day.at(lo)
-	z.fly(f, &s, z.c.Mass)
-	j := 0.0
-	if f.kind == Tabulated {
-		z.scan(f)
-		q, _ := f.scanMaximum(z.nodes, of)
-		j = q.p
-	}
 	var r num.Root
-	if j > 0 {
+	if j := z.hump; j > 0 {
+		var x float64
 		r.Start(lo, flo, hi, fhi, 1e-7)
 		for r.Next() {
-			s := z.day.at(r.X)
-			z.fly(f, &s, z.c.Mass)
-			if f.kind != Tabulated {
-				r.Put(-target - 1)
-				continue
-			}
-			var x float64
-			j, x = f.nudge(j, of)
+			j, x = z.carried(r.X, j, of)
 			r.Put(x/f.weight - target)
 		}
-		if x := z.climbAt(r.X, target, gradient); math.Abs(x) <= 1e-9*max(1, target) {
+		j, x = z.carried(r.X, j, of)
+		if math.Abs(x/f.weight-target) <= 1e-9*max(1, target) && f.otherHumpsBelow(j, x, of) {
+			z.highest = r.X
+			z.highestSpeed, _, _ = f.at(j)
 			return r.X
 		}
 	}
@@ -181,6 +179,46 @@ func (z *Solver) tableHeight(lo, flo, hi, fhi, target float64, gradient bool) fl
 		r.Put(z.climbAt(r.X, target, gradient))
 	}
 	return r.X
+}
+
+// carried is the best climb at height h on the hump of advance ratio j.
+func (z *Solver) carried(h, j float64, of int) (float64, float64) {
+	s := z.day.at(h)
+	f := &z.high
+	z.fly(f, &s, z.c.Mass)
+	if f.kind != Tabulated {
+		return j, -f.weight // no power: no thrust
+	}
+	return f.nudge(j, of)
+}
+
+// otherHumpsBelow reports whether the nodes show no hump away from j that could be as high as x.
+func (f *flight) otherHumpsBelow(j, x float64, of int) bool {
+	nodes := f.table.node
+	before, here, hereDrag := math.Inf(-1), math.Inf(-1), 0.0
+	left, at := 0.0, 0.0
+	for i := 0; i <= len(nodes); i++ {
+		after, drag, right := math.Inf(-1), 0.0, math.Inf(1)
+		if i < len(nodes) {
+			g := &nodes[i]
+			right = g.j
+			n := min(f.tq*g.r2, f.tp*g.r3)
+			if v := g.j * n * f.dia; v >= f.stall {
+				drag = f.drag.at(v)
+				after = f.rhoD4*n*n*g.ct - drag
+				if of == ofPower {
+					after *= v
+					drag *= v
+				}
+			}
+		}
+		if here >= before && here >= after && here > x-glanceMargin*hereDrag && !(j >= left && j <= right) {
+			return false
+		}
+		before, here, hereDrag = here, after, drag
+		left, at = at, right
+	}
+	return true
 }
 
 // nudge moves an advance ratio to the top of the hump it is on by secant steps on the slope, and gives the merit there. It is held

@@ -38,6 +38,7 @@ func (z *Solver) greatestGradient(f *flight) (v, thrust float64) {
 	}
 	z.scan(f)
 	q, m := f.scanMaximum(z.nodes, ofThrust)
+	z.peak = q
 	return q.v, m
 }
 

@@ -9,7 +9,7 @@ import (
 // cruiseCells is into how many parts the search for the speed of best range divides the band where the fuel flow may have several
 // minima a distance; kinkCells into how many it divides a part that holds a corner of the consumption table.
 const (
-	cruiseCells = 24
+	cruiseCells = 16
 	kinkCells   = 8
 )
 

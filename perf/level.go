@@ -38,7 +38,10 @@ func (z *Solver) levelSpan(f *flight, v float64) span {
 		}
 	default:
 		z.scan(f)
-		q, _ := f.scanMaximum(z.nodes, ofThrust)
+		q := z.peak
+		if q.v != v {
+			q, _ = f.scanMaximum(z.nodes, ofThrust)
+		}
 		lo, hi, stalled := f.scanBand(z.nodes, q)
 		s.fast = hi
 		if !stalled {
@@ -123,6 +126,9 @@ func (z *Solver) levelFlight(dst *Answer) (s span, ok bool) {
 // holdSpeed narrows the band to where level flight, throttle set for it, takes no more than n rev/s.
 func (z *Solver) holdSpeed(s *span, n float64, dst *Answer) bool {
 	f, g := &z.now, &z.other
+	if f.kind == Tabulated && f.below(s, n) {
+		return true
+	}
 	z.capped(f, g, n)
 	v, x := z.greatestGradient(g)
 	if x >= 0 {
@@ -156,4 +162,20 @@ func (z *Solver) holdSpeed(s *span, n float64, dst *Answer) bool {
 	}
 	dst.Outcome, dst.Shortfall, dst.ShortfallTAS = RPMTooHigh, max(-power, 0), TAS(v)
 	return false
+}
+
+// below reports whether a tabulated propeller turns slower than n all along the band. CP is monotone between the rows, so the
+// rpm is greatest at a node or an end.
+func (f *flight) below(s *span, n float64) bool {
+	if f.revs(s.slow) > n || f.revs(s.fast) > n {
+		return false
+	}
+	for i := range f.table.node {
+		g := &f.table.node[i]
+		r := min(f.tq*g.r2, f.tp*g.r3)
+		if v := g.j * r * f.dia; r > n && v > s.slow && v < s.fast {
+			return false
+		}
+	}
+	return true
 }

@@ -17,6 +17,8 @@ type Solver struct {
 	nodes                 []point // scan of the flight whose serial is scanned
 	serial                uint64
 	scanned               uint64
+	hump                  float64 // advance ratio of the greatest climb seen at a glance
+	peak                  point   // of the greatest excess thrust that greatestGradient found by scanning
 	highest, highestSpeed float64 // height of high, and the speed of the greatest climb there
 	above, there          float64 // from this height upwards the climb is known to be less than there
 	overhead              bool    // there is a height of level flight
