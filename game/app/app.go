@@ -123,7 +123,9 @@ func (a *App) Step(in Input) bool {
 		a.notify(n)
 	}
 	for _, f := range in.Failures {
-		a.view.failures = append(a.view.failures, f)
+		if a.view.failures = append(a.view.failures, f); len(a.view.failures) > 20 {
+			a.view.failures = a.view.failures[1:]
+		}
 		a.dirty = true
 	}
 	a.takeEvents(in.Events)

@@ -43,6 +43,7 @@ func (a *App) draw() {
 	s := &a.solved
 	a.report = report.Report{Case: a.doc.current, Aeroplane: s.aero, Condition: s.cond, Answer: s.answer, Units: a.units}
 	a.limitRows()
+	a.factLines()
 	a.mirror.Summary = a.summary()
 	a.mirror.Warnings = a.cautions()
 	a.drawHeader(f)

@@ -16,7 +16,12 @@ func (a *App) drawHeader(f *ui.Frame) {
 		f.Scene.FillRect(scene.Rect{X: l.window.X, Y: l.tabs.Y, W: l.window.W, H: l.tabs.H}, 0, t.Bar)
 	}
 	bar := ui.Trim(l.header, 0, l.margin-12, 0, l.margin)
-	bar = a.drawTools(f, bar)
+	tools, cells, bar := a.tools(bar)
+	defer func() { // after the tabs: the focus goes from left to right
+		for i := range tools {
+			tools[i].Draw(f, cells[i])
+		}
+	}()
 	tabs := []ui.Choice{{ID: "tab/chart", Text: "Chart", Selected: a.view.screen == screenChart},
 		{ID: "tab/aeroplane", Text: "Aeroplane", Selected: a.view.screen == screenAeroplane}}
 	switch {
@@ -45,29 +50,28 @@ func (a *App) drawHeader(f *ui.Frame) {
 	}
 }
 
-// drawTools draws the buttons at the right end of the header and returns what is left of it.
-func (a *App) drawTools(f *ui.Frame, r scene.Rect) scene.Rect {
+// tools are the buttons at the right end of the header, from left to right, their places and what is left of it.
+func (a *App) tools(r scene.Rect) (tools []ui.Button, cells []scene.Rect, rest scene.Rect) {
 	undo, redo := a.doc.nextUndo(), a.doc.nextRedo()
-	tools := []ui.Button{
-		{ID: "menu", Icon: ui.IconMenu, Label: "Menu"},
-		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share: copy the link", Bold: true},
-		{ID: "redo", Icon: ui.IconRedo, Label: named("Redo", redo), Disabled: redo == ""},
+	tools = []ui.Button{
 		{ID: "undo", Icon: ui.IconUndo, Label: named("Undo", undo), Disabled: undo == ""},
+		{ID: "redo", Icon: ui.IconRedo, Label: named("Redo", redo), Disabled: redo == ""},
+		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share: copy the link", Bold: true},
+		{ID: "menu", Icon: ui.IconMenu, Label: "Menu"},
 	}
 	if a.layout.format == phone && a.layout.low { // the menu has it too
-		tools = append(tools[:1], tools[2:]...)
+		tools = append(tools[:2], tools[3:]...)
 	}
-	for i := range tools {
+	cells = make([]scene.Rect, len(tools))
+	for i := len(tools) - 1; i >= 0; i-- {
 		if a.layout.compact || a.layout.safe.W < 900 {
-			tools[i].Text = ""
-			tools[i].Bold = false
+			tools[i].Text, tools[i].Bold = "", false
 		}
-		var cell scene.Rect
-		cell, r = ui.CutRight(r, tools[i].Width())
-		tools[i].Draw(f, ui.Trim(cell, 2, 0, 2, 0))
+		cells[i], r = ui.CutRight(r, tools[i].Width())
+		cells[i] = ui.Trim(cells[i], 2, 0, 2, 0)
 	}
 	r.W = math.Max(0, r.W-8)
-	return r
+	return tools, cells, r
 }
 
 func named(verb, what string) string {

@@ -161,3 +161,17 @@ func TestHandlesReachBothEnds(t *testing.T) {
 		}
 	}
 }
+
+func TestFocusGoesFromLeftToRight(t *testing.T) {
+	p := newPilot(t, 1280, 800)
+	at := map[string]int{}
+	for i, c := range p.app.Controls() {
+		at[c.ID] = i
+	}
+	order := []string{"tab/chart", "tab/aeroplane", "undo", "redo", "share", "menu", handleAltitude, handleMass, "speed-kind/IAS", "limit/stall", "limit/never_exceed"}
+	for i := 1; i < len(order); i++ {
+		if at[order[i-1]] >= at[order[i]] {
+			t.Errorf("the focus comes to %s before %s", order[i], order[i-1])
+		}
+	}
+}

@@ -218,49 +218,53 @@ func smaller(s scene.Style) scene.Style {
 	return scene.Small
 }
 
-// factLine is one line under the limits; an empty one parts two sections.
-type factLine struct{ name, aside, value string }
+// factLine is one line under the limits. The aside says what the value is, the short one where that has no room.
+type factLine struct{ name, aside, short, value string }
 
-// factLines are the lines under the limits: ceilings, what is possible, the turn.
-func (a *App) factLines() []factLine {
+// factLines writes the lines under the limits: ceilings, what is possible, the turn.
+func (a *App) factLines() {
 	ans, u := &a.solved.answer, &a.units
 	lines := a.facted[:0]
 	ceiling := func(name string, c *perf.Ceiling) {
 		if c.Applies {
-			lines = append(lines, factLine{name, "density altitude", u.AltitudeCoarse(c.DensityAltitude).String()})
+			lines = append(lines, factLine{name, "density altitude", "DA", u.AltitudeCoarse(c.DensityAltitude).String()})
 		} else {
-			lines = append(lines, factLine{name, "", "none"})
+			lines = append(lines, factLine{name, "", "", a.noCeiling(c)})
 		}
 	}
 	ceiling("Service ceiling", &ans.Service)
 	ceiling("Absolute ceiling", &ans.Absolute)
 	allowance := func(name string, w *perf.Allowance) {
-		value := ""
-		switch most := a.solved.aero.MaximumMass; {
-		case w.MassApplies && w.Mass > most: // what the papers do not allow is not offered
-			value = "max weight"
-		case w.MassApplies:
-			value = u.MassWhole(w.Mass).String()
-		}
+		height := ""
 		if w.AltitudeApplies {
-			if value != "" {
-				value += " / "
-			}
-			value += u.AltitudeCoarse(w.DensityAltitude).String()
+			height = u.AltitudeCoarse(w.DensityAltitude).String()
 		}
-		if value != "" {
-			lines = append(lines, factLine{name, "weight / height", value})
+		switch {
+		case w.MassApplies && w.Mass <= a.solved.aero.MaximumMass && height != "":
+			lines = append(lines, factLine{name + " up to", "weight / density altitude", "", u.MassWhole(w.Mass).String() + " / " + height})
+		case w.MassApplies && w.Mass <= a.solved.aero.MaximumMass:
+			lines = append(lines, factLine{name + " up to", "weight", "", u.MassWhole(w.Mass).String()})
+		case height != "": // no weight that the papers allow is too much
+			lines = append(lines, factLine{name + " up to", "density altitude", "DA", height})
 		}
 	}
-	allowance("Level up to", &ans.Level)
+	allowance("Level", &ans.Level)
 	if g := a.solved.cond.ClimbGradient; g > 0 {
-		allowance(u.Gradient(g).String()+" up to", &ans.Climb)
+		allowance(u.Gradient(g).String(), &ans.Climb)
 	}
 	if ans.Turn.Applies {
-		lines = append(lines, factLine{"Tightest turn", "bank / radius", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
+		lines = append(lines, factLine{"Tightest turn", "bank / radius", "", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
 	}
 	a.facted = lines
-	return lines
+}
+
+// noCeiling says why there is no ceiling: it lies above the atmosphere that the model knows, or there is none at any height.
+func (a *App) noCeiling(c *perf.Ceiling) string {
+	l := &a.solved.answer.Limits[perf.FastestClimb]
+	if a.solved.answer.Outcome == perf.LevelFlight && l.Applies && l.Rate > c.Rate {
+		return "not reached"
+	}
+	return "none"
 }
 
 // factColumns is in how many columns the lines stand.
@@ -272,14 +276,14 @@ func (a *App) factColumns() int {
 }
 
 func (a *App) factsHeight() float64 {
-	n, columns := len(a.factLines()), a.factColumns()
+	n, columns := len(a.facted), a.factColumns()
 	return panelSection*2 + panelLine*float64((n+columns-1)/columns)
 }
 
 // drawFacts draws ceilings, allowances and turn.
 func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
 	t := f.Theme
-	lines, columns := a.factLines(), a.factColumns()
+	lines, columns := a.facted, a.factColumns()
 	per := (len(lines) + columns - 1) / columns
 	for i := range lines {
 		l, c := &lines[i], r
@@ -304,8 +308,12 @@ func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
 		f.Label(name, row, scene.Left, l.name, t.Ink)
 		row.X += scene.Measure(name, l.name) + 10
 		row.W -= scene.Measure(name, l.name) + 10
-		if scene.Measure(scene.Small, l.aside) <= row.W {
-			f.Scene.Label(scene.Small, row.X, ui.Baseline(scene.Body, row), scene.Left, l.aside, t.Muted)
+		aside := l.aside
+		if scene.Measure(scene.Small, aside) > row.W {
+			aside = l.short
+		}
+		if scene.Measure(scene.Small, aside) <= row.W {
+			f.Scene.Label(scene.Small, row.X, ui.Baseline(scene.Body, row), scene.Left, aside, t.Muted)
 		}
 	}
 }
