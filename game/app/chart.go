@@ -16,6 +16,7 @@ type chart struct {
 	upper, lower                          []scene.Point
 	line                                  []scene.Point
 	labels                                []scene.Rect // taken by words in the plot
+	boxPlace                              int          // of the message of no level flight, 0 none yet
 }
 
 // drawChart draws the Chart screen.
@@ -330,7 +331,7 @@ func (a *App) drawShortfall(f *ui.Frame) {
 		h += f.ParagraphHeight(body, in, l) + 2
 	}
 	// In a low window the box covers the rail of speeds too: there is no band on it to be seen.
-	r := scene.Rect{X: p.X + (p.W-width)/2, Y: p.Y + 8, W: width, H: math.Min(h, a.layout.mass.Y-p.Y-12)}
+	r := a.leastCovering(width, math.Min(h, a.layout.mass.Y-p.Y-12))
 	f.Box(r, 8, t.BadBack, t.Bad)
 	f.PushView(r)
 	y := r.Y + pad - 2
@@ -341,6 +342,34 @@ func (a *App) drawShortfall(f *ui.Frame) {
 	}
 	f.PopView()
 	a.chart.labels = append(a.chart.labels, r)
+}
+
+// leastCovering is where in the plot a box hides least of the curves; it begins in the plot, and may reach below it.
+func (a *App) leastCovering(w, h float64) scene.Rect {
+	p, s, ch := a.layout.plot, &a.solved, &a.chart
+	best, least, at, place := scene.Rect{}, math.MaxInt, 0, 0
+	for _, ky := range [...]float64{0, 1, 0.5} {
+		for _, kx := range [...]float64{0.5, 1, 0} {
+			place++
+			r := scene.Rect{X: p.X + kx*(p.W-w), Y: p.Y + 8 + ky*math.Max(0, p.H-h-16), W: w, H: h}
+			n := 0
+			for _, curve := range [...]*[curvePoints]float64{&s.required, &s.available} {
+				for i := range curve {
+					if ui.Contains(ui.Inset(r, -6), ch.x.Pos(s.speed[i]), ch.y.Pos(curve[i])) {
+						n++
+					}
+				}
+			}
+			if place == ch.boxPlace { // it does not hop about under a drag for a little gain
+				n -= 10
+			}
+			if n < least {
+				best, least, at = r, n, place
+			}
+		}
+	}
+	ch.boxPlace = at
+	return best
 }
 
 // shortfallWords is the answer where there is no level flight.

@@ -150,7 +150,7 @@ func (r *ranges) refresh(d *document, kind string, scratch *perf.Solver) {
 	cond.Bank, cond.PowerFraction, cond.Headwind, cond.ClimbGradient = 0, 1, 0, 0
 	r.altitude = altitudeRange(&aero, cond, scratch, c)
 	r.speed, r.power = curveRanges(&aero, cond, scratch, kind, r.altitude)
-	r.power.hi = math.Max(r.power.hi, 1.3*mostRequired(&aero, cond, scratch, r.mass, r.altitude))
+	r.power.hi = math.Max(r.power.hi, 1.6*mostRequired(&aero, cond, scratch, r.mass, r.altitude))
 }
 
 func massRange(c *casefile.Case) span {
