@@ -49,6 +49,8 @@ bench:
 	@if command -v node >/dev/null 2>&1; then \
 	  GOOS=js GOARCH=wasm $(GO) test -run '^$$' -bench . -exec "$$($(GO) env GOROOT)/lib/wasm/go_js_wasm_exec" ./perf; \
 	fi
+	$(GO) test -run '^$$' -bench . -benchmem ./wasm
+	$(GO) test -count=1 -run TestMeasure -v ./wasm -measure
 
 desktop:
 	@.ci/deps desktop

@@ -50,6 +50,14 @@
   const ratio = Math.min(real, 3, Math.max(longest * 2 > 4096 ? 1 : 2, 2600 / longest));
   if (ratio !== real) Object.defineProperty(window, 'devicePixelRatio', {configurable: true, get: () => ratio});
 
+  // The drawing library asks for a context with the browser's defaults. The drawing smooths its own edges and covers all
+  // of its canvas: many samples a pixel and a blend with the page below would cost much and show nothing.
+  const plain = HTMLCanvasElement.prototype.getContext;
+  HTMLCanvasElement.prototype.getContext = function (kind, options, ...more) {
+    if (kind === 'webgl2') options = Object.assign({}, options, {antialias: false, alpha: false, depth: false});
+    return plain.call(this, kind, options, ...more);
+  };
+
   // The program's bytes: inside this page, or beside it.
   const inline = byId('levelspan-program');
   const inflate = async (packed, size) => {
