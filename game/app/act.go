@@ -130,35 +130,42 @@ func (a *App) mark(k perf.Key) {
 	a.dirty = true
 }
 
-// tapChart marks the limit nearest to where the plot was tapped, within a finger's width; elsewhere nothing is marked.
+// tapChart marks the limit nearest to where the plot was tapped, within a finger's width; a tap on the one that is marked goes
+// on to the next nearest there, and after the last, or where nothing is near, nothing is marked.
 func (a *App) tapChart(act *ui.Action) {
 	const reach = 32.0
-	best, at := reach, perf.KeyCount
+	var near [perf.KeyCount]perf.Key
+	var far [perf.KeyCount]float64
+	n := 0
 	for k := perf.Key(0); k < perf.KeyCount; k++ {
 		l := &a.solved.answer.Limits[k]
 		if !l.Applies {
 			continue
 		}
 		v := inKind(l, a.speedKind())
-		dx := math.Abs(a.chart.x.Pos(v) - act.X)
-		dy := math.Abs(a.chart.y.Pos(a.solved.powerAt(&a.solved.required, v)) - act.Y)
-		if math.IsNaN(dy) {
-			dy = 200
+		d := math.Abs(a.chart.x.Pos(v) - act.X)
+		if !(d < reach) {
+			continue
 		}
-		if d := dx + 0.02*math.Min(dy, 200); d < best {
-			best, at = d, k
+		i := n
+		for ; i > 0 && far[i-1] > d; i-- {
+			near[i], far[i] = near[i-1], far[i-1]
+		}
+		near[i], far[i] = k, d
+		n++
+	}
+	next := 0
+	for i := 0; i < n; i++ {
+		if a.view.marked && near[i] == a.view.selected {
+			next = i + 1
 		}
 	}
-	if at == perf.KeyCount {
+	if next == n {
 		a.view.marked = false
 		return
 	}
-	if !a.view.marked || a.view.selected != at {
-		a.mark(at)
-		a.reveal(at)
-	} else {
-		a.view.marked = false
-	}
+	a.view.marked, a.view.selected = true, near[next]
+	a.reveal(near[next])
 }
 
 // reveal scrolls the panel so that a limit's row is seen.

@@ -360,11 +360,32 @@ func TestMarkingWorksBothWays(t *testing.T) {
 	if !p.row("best_glide").Selected || !p.control("limit/best_glide").Selected {
 		t.Fatal("a tapped row is not marked")
 	}
-	x := p.app.chart.x.Pos(p.row("fastest_climb").CASMps)
-	p.in.Now += 1e9
-	p.tapAt(x+3, p.app.chart.y.Pos(p.app.solved.powerAt(&p.app.solved.required, p.row("fastest_climb").CASMps))+20)
-	if !p.row("fastest_climb").Selected && !p.row("best_glide").Selected {
-		t.Error("a tap near a mark on the chart selects nothing")
+	p.tap("limit/best_glide")
+	// A tap beside the slowest mark selects it; further taps there go on to what else is near, and come to an end.
+	x, y := p.app.chart.x.Pos(p.row("stall").CASMps)-20, p.app.layout.plot.Y+60
+	seen := map[string]bool{}
+	for range 12 {
+		p.in.Now += 1e9
+		p.tapAt(x, y)
+		marked := ""
+		for _, r := range p.app.Mirror().Rows {
+			if r.Selected {
+				marked = r.Key
+				if at := p.app.chart.x.Pos(r.CASMps); math.Abs(at-x) > 32 {
+					t.Errorf("a tap at %g px marked %s at %g px", x, r.Key, at)
+				}
+			}
+		}
+		if marked == "" {
+			break
+		}
+		if seen[marked] {
+			t.Fatalf("%s was marked twice", marked)
+		}
+		seen[marked] = true
+	}
+	if !seen["stall"] || !seen["slowest_level"] {
+		t.Errorf("taps beside the stall marked only %v", seen)
 	}
 	p.tap("limit/never_exceed")
 	if !p.row("never_exceed").Selected || p.row("best_glide").Selected {
