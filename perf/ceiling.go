@@ -121,7 +121,7 @@ func (z *Solver) glance(h, target float64, gradient bool) float64 {
 	aim := target * f.weight
 	for i := range f.table.node {
 		g := &f.table.node[i]
-		n := min(f.tq*g.r2, f.tp*g.r3)
+		n := f.nodeRevs(g)
 		v := g.j * n * f.dia
 		if v < f.stall {
 			continue
@@ -202,7 +202,7 @@ func (f *flight) otherHumpsBelow(j, x float64, of int) bool {
 		if i < len(nodes) {
 			g := &nodes[i]
 			right = g.j
-			n := min(f.tq*g.r2, f.tp*g.r3)
+			n := f.nodeRevs(g)
 			if v := g.j * n * f.dia; v >= f.stall {
 				drag = f.drag.at(v)
 				after = f.rhoD4*n*n*g.ct - drag

@@ -172,7 +172,7 @@ func (f *flight) below(s *span, n float64) bool {
 	}
 	for i := range f.table.node {
 		g := &f.table.node[i]
-		r := min(f.tq*g.r2, f.tp*g.r3)
+		r := f.nodeRevs(g)
 		if v := g.j * r * f.dia; r > n && v > s.slow && v < s.fast {
 			return false
 		}

@@ -211,8 +211,20 @@ func (f *flight) advance(v float64) float64 {
 	return r.X
 }
 
+// nodeRevs is the rpm (rev/s) at a node; comparisons, for the built-in min minds signs of zero and is slow in a browser.
+func (f *flight) nodeRevs(g *tableNode) float64 {
+	n := f.tq * g.r2
+	if m := f.tp * g.r3; m < n {
+		n = m
+	}
+	if f.cap < n {
+		n = f.cap
+	}
+	return n
+}
+
 func (f *flight) nodeSpeed(g *tableNode) float64 {
-	return g.j * f.dia * min(f.tq*g.r2, f.tp*g.r3, f.cap)
+	return g.j * f.dia * f.nodeRevs(g)
 }
 
 // thrust is the thrust at speed v > 0, N.

@@ -37,7 +37,7 @@ func (z *Solver) scan(f *flight) {
 			if g.j <= p*(1+1e-9) {
 				continue
 			}
-			n := min(f.tq*g.r2, f.tp*g.r3, f.cap)
+			n := f.nodeRevs(g)
 			last = point{g.j, g.j * n * f.dia, f.rhoD4 * n * n * g.ct}
 			nodes = append(nodes, last)
 		}
