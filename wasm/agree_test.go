@@ -120,9 +120,6 @@ func (b *tab) agree(after string) string {
 		if want := fmt.Sprintf("%.0f", l.CAS/knot); !strings.HasPrefix(r.Value, want) {
 			b.t.Errorf("after %s: %s is shown as %s, and is %s kt", after, l.Key, r.Value, want)
 		}
-		if l.SetBy == "lift" {
-			l.SetBy = "stall" // the page's word for it
-		}
 		if r.SetBy != l.SetBy {
 			b.t.Errorf("after %s: %s is set by %q on the page, by %q from the command", after, l.Key, r.SetBy, l.SetBy)
 		}
