@@ -30,17 +30,18 @@ type App struct {
 	drags  [2]railDrag // by handle
 	slide  slideRun
 
-	router  ui.Router
-	actions []ui.Action
-	frame   ui.Frame
-	scene   scene.Scene
-	mirror  Mirror
-	rows    []limitRow
-	facted  []factLine
-	report  report.Report // the answer on the screen, in the words that the command uses too
-	chart   chart
-	dirty   bool
-	now     time.Duration
+	router   ui.Router
+	actions  []ui.Action
+	frame    ui.Frame
+	scene    scene.Scene
+	mirror   Mirror
+	rows     []limitRow
+	facted   []factLine
+	stripped []string      // the warnings of the strip
+	report   report.Report // the answer on the screen, in the words that the command uses too
+	chart    chart
+	dirty    bool
+	now      time.Duration
 }
 
 // window is the size of the picture and its insets.

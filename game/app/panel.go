@@ -219,7 +219,10 @@ func smaller(s scene.Style) scene.Style {
 }
 
 // factLine is one line under the limits. The aside says what the value is, the short one where that has no room.
-type factLine struct{ name, aside, short, value string }
+type factLine struct {
+	name, aside, short, value string
+	caution                   bool // the aside is a caution
+}
 
 // factLines writes the lines under the limits: ceilings, what is possible, the turn.
 func (a *App) factLines() {
@@ -227,9 +230,9 @@ func (a *App) factLines() {
 	lines := a.facted[:0]
 	ceiling := func(name string, c *perf.Ceiling) {
 		if c.Applies {
-			lines = append(lines, factLine{name, "density altitude", "DA", u.AltitudeCoarse(c.DensityAltitude).String()})
+			lines = append(lines, factLine{name: name, aside: "density altitude", short: "DA", value: u.AltitudeCoarse(c.DensityAltitude).String()})
 		} else {
-			lines = append(lines, factLine{name, "", "", a.noCeiling(c)})
+			lines = append(lines, factLine{name: name, value: a.noCeiling(c)})
 		}
 	}
 	ceiling("Service ceiling", &ans.Service)
@@ -241,11 +244,11 @@ func (a *App) factLines() {
 		}
 		switch {
 		case w.MassApplies && w.Mass <= a.solved.aero.MaximumMass && height != "":
-			lines = append(lines, factLine{name + " up to", "weight / density altitude", "", u.MassWhole(w.Mass).String() + " / " + height})
+			lines = append(lines, factLine{name: name + " up to", aside: "weight / density altitude", value: u.MassWhole(w.Mass).String() + " / " + height})
 		case w.MassApplies && w.Mass <= a.solved.aero.MaximumMass:
-			lines = append(lines, factLine{name + " up to", "weight", "", u.MassWhole(w.Mass).String()})
+			lines = append(lines, factLine{name: name + " up to", aside: "weight", value: u.MassWhole(w.Mass).String()})
 		case height != "": // no weight that the papers allow is too much
-			lines = append(lines, factLine{name + " up to", "density altitude", "DA", height})
+			lines = append(lines, factLine{name: name + " up to", aside: "density altitude", short: "DA", value: height})
 		}
 	}
 	allowance("Level", &ans.Level)
@@ -253,7 +256,11 @@ func (a *App) factLines() {
 		allowance(u.Gradient(g).String(), &ans.Climb)
 	}
 	if ans.Turn.Applies {
-		lines = append(lines, factLine{"Tightest turn", "bank / radius", "", figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()})
+		turn := factLine{name: "Tightest turn", aside: "bank / radius", value: figure.Degrees(ans.Turn.Bank).String() + " / " + u.Metres(ans.Turn.Radius).String()}
+		if ans.Cautions[perf.CautionTurnNearStall] {
+			turn.aside, turn.short, turn.caution = "below 1.2 × its stall", "near stall", true
+		}
+		lines = append(lines, turn)
 	}
 	a.facted = lines
 }
@@ -295,7 +302,11 @@ func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
 		}
 		row := scene.Rect{X: c.X, Y: r.Y + panelSection + float64(i%per)*panelLine, W: c.W, H: panelLine}
 		style := scene.Title
-		if scene.Measure(style, l.value)+scene.Measure(scene.Body, l.name)+12 > c.W {
+		room := c.W - 12
+		if l.caution {
+			room -= scene.Measure(scene.Small, l.short) + 10 // a caution is never dropped for want of room
+		}
+		if scene.Measure(style, l.value)+scene.Measure(scene.Body, l.name) > room {
 			style = scene.BodyBold
 		}
 		w := scene.Measure(style, l.value)
@@ -313,7 +324,11 @@ func (a *App) drawFacts(f *ui.Frame, r scene.Rect) {
 			aside = l.short
 		}
 		if scene.Measure(scene.Small, aside) <= row.W {
-			f.Scene.Label(scene.Small, row.X, ui.Baseline(scene.Body, row), scene.Left, aside, t.Muted)
+			ink := t.Muted
+			if l.caution {
+				ink = t.Caution
+			}
+			f.Scene.Label(scene.Small, row.X, ui.Baseline(scene.Body, row), scene.Left, aside, ink)
 		}
 	}
 }

@@ -35,10 +35,18 @@ func (a *App) cautions() []string {
 // graveCautions come first.
 var graveCautions = [...]perf.Caution{perf.CautionNoLevelFlight, perf.CautionClimbAboveNeverExceed, perf.CautionNearCeiling, perf.CautionAboveMaximumMass}
 
-// drawStrip draws the cautions under the chart; without any, the day in one sentence.
+// drawStrip draws the cautions under the chart; without any, the day in one sentence. The caution of the tightest turn
+// stands beside that turn in the panel, and here too only when the day is flown in a bank: it holds for most aeroplanes,
+// and a strip that never clears is not read.
 func (a *App) drawStrip(f *ui.Frame) {
 	t, r := f.Theme, a.layout.strip
-	texts := a.mirror.Warnings
+	texts := a.stripped[:0]
+	for _, text := range a.mirror.Warnings {
+		if text != perf.CautionTurnNearStall.Text() || a.solved.cond.Bank > 0 {
+			texts = append(texts, text)
+		}
+	}
+	a.stripped = texts
 	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
 	if len(texts) == 0 {
 		f.Scene.FillRect(a.toEdges(r), 0, t.Bar)
