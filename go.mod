@@ -16,4 +16,5 @@ require (
 	golang.org/x/sync v0.25.0 // indirect
 	golang.org/x/sys v0.50.0 // indirect
 	golang.org/x/text v0.44.0 // indirect
+	rsc.io/qr v0.2.0 // indirect
 )
