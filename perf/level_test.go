@@ -11,7 +11,7 @@ func TestConstantEfficiencyByHand(t *testing.T) {
 	const slow, fast, a = 20.0, 90.0, 0.35
 	c := a * (fast*fast*fast - slow*slow*slow) / (1/slow - 1/fast)
 	power := a*slow*slow*slow + c/slow
-	const area, aspect = 14.0, 8.0
+	const area, aspect = 60.0, 8.0
 	cd0 := 2 * a / (SeaLevelDensity * area)
 	const e = 0.8
 	k := 1 / (math.Pi * aspect * e)
