@@ -46,14 +46,15 @@ func (p *page) frame(width, height, scale float64) *scene.Scene {
 	if !changed {
 		return nil
 	}
-	if patch := p.mirror.update(p.app.Controls(), p.app.Mirror()); patch != "" {
+	show := p.app.Scene()
+	if patch := p.mirror.update(p.app.Controls(), p.app.Mirror(), show.Background); patch != "" {
 		p.bridge.call("patch", patch)
 	}
 	if focus := p.app.FocusID(); focus != p.focus {
 		p.focus = focus
 		p.bridge.call("focus", focus)
 	}
-	return p.app.Scene()
+	return show
 }
 
 // shown is called by the surface when a scene has been drawn.

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"fmt"
 	"math"
 	"slices"
 	"strconv"
@@ -84,13 +85,23 @@ func pixels(v float64) string {
 
 // update gives the patch from what the page shows to the given state; "" if nothing changed. The text is good until
 // the next call.
-func (m *mirror) update(controls []ui.Control, said *app.Mirror) string {
+func (m *mirror) update(controls []ui.Control, said *app.Mirror, ground scene.Color) string {
 	m.out = m.out[:0]
+	m.palette(ground)
 	m.controls(controls)
 	if said != nil {
 		m.said(said)
 	}
 	return string(m.out)
+}
+
+// palette gives the page's own parts (a text field being edited, the edge that a browser shows) the drawing's colours.
+func (m *mirror) palette(ground scene.Color) {
+	name := "day"
+	if 2*int(ground.R)+5*int(ground.G)+int(ground.B) < 8*128 {
+		name = "night"
+	}
+	m.text("c", name, fmt.Sprintf("#%02x%02x%02x", ground.R, ground.G, ground.B))
 }
 
 func (m *mirror) controls(controls []ui.Control) {

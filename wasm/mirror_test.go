@@ -11,6 +11,9 @@ import (
 	"levelspan/game/ui"
 )
 
+// paper is a ground by day.
+var paper = scene.Color{R: 252, G: 251, B: 247, A: 255}
+
 func board() []ui.Control {
 	return []ui.Control{
 		{ID: "tab/chart", Role: ui.RoleTab, Label: "Chart", Selected: true, Bounds: scene.Rect{X: 1, Y: 2, W: 80, H: 48}},
@@ -76,6 +79,8 @@ func (p *fakePage) apply(patch string) (records int) {
 			}
 		case "t", "l":
 			p.texts[f[1]] = f[2]
+		case "c":
+			p.texts["palette"] = f[1] + " " + f[2]
 		case "f", "F", "T":
 		default:
 			p.t.Fatalf("unknown record %q", record)
@@ -87,7 +92,7 @@ func (p *fakePage) apply(patch string) (records int) {
 func TestMirrorControls(t *testing.T) {
 	m, p := newMirror(), newFakePage(t)
 	controls := board()
-	p.apply(m.update(controls, nil))
+	p.apply(m.update(controls, nil, paper))
 	for _, c := range []struct{ id, attribute, want string }{
 		{"tab/chart", "role", "tab"}, {"tab/chart", "aria-selected", "true"}, {"tab/chart", "tabindex", "0"},
 		{"tab/chart", "place", "1 2 80 48"},
@@ -106,14 +111,18 @@ func TestMirrorControls(t *testing.T) {
 	if want := "<tablist screens|tab/chart|tab/aeroplane|>|undo|<radiogroup speed kind|speed-kind/IAS|speed-kind/CAS|>|handle/mass|name|list"; p.order != want {
 		t.Errorf("order %s", p.order)
 	}
-	if patch := m.update(controls, nil); patch != "" {
+	if patch := m.update(controls, nil, paper); patch != "" {
 		t.Errorf("nothing changed, but the patch is %q", patch)
+	}
+
+	if got := p.texts["palette"]; got != "day #fcfbf7" {
+		t.Errorf("palette %s", got)
 	}
 
 	// A handle that moves changes its place and value, and nothing else.
 	moved := board()
 	moved[5].Value, moved[5].ValueText, moved[5].Bounds.X = 700, "700 kg", 33.126
-	if n := p.apply(m.update(moved, nil)); n != 3 {
+	if n := p.apply(m.update(moved, nil, paper)); n != 3 {
 		t.Errorf("%d records for one handle that moved", n)
 	}
 	if e := p.elements["handle/mass"]; e["aria-valuenow"] != "700" || e["aria-valuetext"] != "700 kg" || e["place"] != "33.13 0 0 0" {
@@ -122,20 +131,20 @@ func TestMirrorControls(t *testing.T) {
 
 	// A dialog covers what lies below, and what is gone goes.
 	over := append(board()[:6], ui.Control{ID: "key/ok", Label: "OK", Modal: 1})
-	p.apply(m.update(over, nil))
+	p.apply(m.update(over, nil, paper))
 	if p.elements["undo"]["inert"] != "true" || p.elements["key/ok"]["inert"] != "" {
 		t.Error("the dialog does not cover the rest")
 	}
 	if p.elements["name"] != nil || p.elements["list"] != nil {
 		t.Error("what is gone is still there")
 	}
-	p.apply(m.update(board(), nil))
+	p.apply(m.update(board(), nil, paper))
 	if p.elements["undo"]["inert"] != "" || p.elements["key/ok"] != nil || p.elements["name"] == nil {
 		t.Error("the dialog is not gone")
 	}
 	changed := board()
 	changed[6].LiveText = false
-	p.apply(m.update(changed, nil))
+	p.apply(m.update(changed, nil, paper))
 	if p.elements["name"]["tag"] != "button" || p.elements["name"]["aria-label"] != "Name, Marram. too long" || !strings.HasSuffix(p.order, "|name|list") {
 		t.Errorf("a field that became a button: %v, order %s", p.elements["name"], p.order)
 	}
@@ -149,7 +158,7 @@ func TestMirrorRows(t *testing.T) {
 			{Key: "stall", Name: "Stall", Symbol: "VS1", ValueText: "44", CASMps: cas, TASMps: 25, IASMps: math.Inf(1)},
 			{Key: "best_glide", Name: "Best glide", CASMps: 31, HasInterval: true, LowCASMps: 30.5, HighCASMps: 31.5, Selected: true},
 		}, Facts: []app.Fact{{Key: "service", Name: "Service ceiling", ValueText: "14 600 ft", Value: 4450}}}
-	p.apply(m.update(nil, &said))
+	p.apply(m.update(nil, &said, paper))
 	if got, err := strconv.ParseFloat(p.rows["stall"][5], 64); err != nil || got != cas {
 		t.Errorf("the speed reads back as %v", got)
 	}
@@ -162,16 +171,16 @@ func TestMirrorRows(t *testing.T) {
 	if p.texts["warnings"] != "a \nb" || p.texts["summary"] != said.Summary || p.texts["status"] != "copied" {
 		t.Errorf("texts %q", p.texts)
 	}
-	if patch := m.update(nil, &said); patch != "" {
+	if patch := m.update(nil, &said, paper); patch != "" {
 		t.Errorf("nothing changed, but the patch is %q", patch)
 	}
 	said.Rows = said.Rows[1:]
-	p.apply(m.update(nil, &said))
+	p.apply(m.update(nil, &said, paper))
 	if len(p.rows) != 1 {
 		t.Errorf("rows %v", p.rows)
 	}
 	said.Rows = append(said.Rows, app.MirrorRow{Key: "stall", Name: "Stall", CASMps: cas})
-	p.apply(m.update(nil, &said))
+	p.apply(m.update(nil, &said, paper))
 	if len(p.rows) != 2 || p.rows["stall"][0] != "Stall" {
 		t.Errorf("a row that came back: %v", p.rows)
 	}
@@ -181,7 +190,7 @@ func TestMirrorRows(t *testing.T) {
 func TestMirrorKeepsTextInItsField(t *testing.T) {
 	m, p := newMirror(), newFakePage(t)
 	hostile := "x\x1e+\x1fevil\x1fbutton\x1e<img src=x onerror=alert(1)>\x00"
-	p.apply(m.update([]ui.Control{{ID: "field/" + hostile, Label: hostile}}, &app.Mirror{Title: hostile, Rows: []app.MirrorRow{{Key: hostile, Name: hostile}}}))
+	p.apply(m.update([]ui.Control{{ID: "field/" + hostile, Label: hostile}}, &app.Mirror{Title: hostile, Rows: []app.MirrorRow{{Key: hostile, Name: hostile}}}, paper))
 	if len(p.elements) != 1 || p.elements["evil"] != nil || len(p.rows) != 1 {
 		t.Errorf("elements %v, rows %v", p.elements, p.rows)
 	}
@@ -195,9 +204,9 @@ func FuzzMirror(f *testing.F) {
 		one := ui.Control{ID: id, Label: label, ValueText: label, Value: v, Role: ui.Role(role % 9), LiveText: live, Bounds: scene.Rect{X: v, W: v}}
 		two := one
 		two.ID, two.Modal = id+"2", 1
-		p.apply(m.update([]ui.Control{one, two, one}, &app.Mirror{Title: label, Rows: []app.MirrorRow{{Key: id, CASMps: v}}}))
-		p.apply(m.update([]ui.Control{two}, &app.Mirror{}))
-		p.apply(m.update([]ui.Control{one}, &app.Mirror{}))
+		p.apply(m.update([]ui.Control{one, two, one}, &app.Mirror{Title: label, Rows: []app.MirrorRow{{Key: id, CASMps: v}}}, paper))
+		p.apply(m.update([]ui.Control{two}, &app.Mirror{}, paper))
+		p.apply(m.update([]ui.Control{one}, &app.Mirror{}, paper))
 		if len(p.elements) > 1 {
 			t.Fatalf("%d elements", len(p.elements))
 		}
@@ -218,6 +227,6 @@ func BenchmarkMirror(b *testing.B) {
 		for j := range said.Rows {
 			said.Rows[j].CASMps = float64(i%300) + float64(j)
 		}
-		m.update(controls, &said)
+		m.update(controls, &said, paper)
 	}
 }

@@ -56,6 +56,42 @@ func TestPictureIsTheScene(t *testing.T) {
 	}
 }
 
+// TestTurn turns the tablet: the drawing, the mirror and the touch all follow.
+func TestTurn(t *testing.T) {
+	b := newTab(t, 1280, 800, 1, true)
+	b.open(singleFile(t))
+	b.do(chromedp.EmulateViewport(800, 1280, chromedp.EmulateScale(1)))
+	b.until("innerWidth === 800 && document.querySelector('[data-handle=mass]').getBoundingClientRect().right < 800")
+	b.settle()
+	a := app.New(noHost{}, nil)
+	a.Step(app.Input{Width: 800, Height: 1280, Scale: 1})
+	img, _ := b.picture()
+	if mean, far := difference(img, raster.Render(a.Scene())); mean > 0.6 || far > 0.002 {
+		t.Errorf("turned: mean difference %.3f of 255, %.2f %% of the pixels far off", mean, 100*far)
+	}
+	mass := b.handle("mass")
+	x, y := b.control("handle/mass").middle()
+	b.dragTouch(x, y, x-80, y, 6, input.DispatchTouchEventTypeTouchEnd)
+	if b.handle("mass") >= mass {
+		t.Error("turned: the handle does not follow the finger")
+	}
+}
+
+// TestIdle demands that an untouched page asks for nothing: no frame of the program runs.
+func TestIdle(t *testing.T) {
+	b := newTab(t, 800, 600, 1, false)
+	b.open(singleFile(t))
+	x, y := b.control("handle/mass").middle()
+	b.dragMouse(x, y, x-50, y, 5)
+	b.do(chromedp.MouseEvent(input.DispatchMouseEventTypeMouseMoved, 100, 100)) // hovering is not touching
+	b.settle()
+	frames := eval[int](b, `(() => { const drain = levelspan.drain; globalThis.frames = 0; levelspan.drain = () => { frames++; return drain(); };
+		return new Promise(done => setTimeout(() => done(frames), 1500)); })()`, awaitPromise)
+	if frames != 0 {
+		t.Errorf("%d frames in a second and a half of nothing", frames)
+	}
+}
+
 // difference is the mean difference of two pictures and the share of pixels that differ by more than a quarter.
 func difference(a, b image.Image) (mean, far float64) {
 	size := a.Bounds().Size()
@@ -177,11 +213,12 @@ func TestProblems(t *testing.T) {
 	}
 }
 
-// TestStops breaks the program in three ways. Each time the figures must be covered, and say so.
+// TestStops breaks the program in four ways. Each time the figures must be covered, and say so.
 func TestStops(t *testing.T) {
 	for name, breakIt := range map[string]string{
 		"a lost context":       "document.querySelector('body>canvas').getContext('webgl2').getExtension('WEBGL_lose_context').loseContext()",
 		"an uncaught error":    "setTimeout(() => { throw new Error('made up') })",
+		"a panic":              "levelspan.texts = () => null, dispatchEvent(new KeyboardEvent('keydown', {key: 'ArrowUp', bubbles: true}))",
 		"an unhandled promise": "Promise.reject(new Error('made up'))",
 	} {
 		b := newTab(t, 800, 600, 1, false)

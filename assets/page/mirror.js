@@ -128,6 +128,10 @@
     'f': f => fact(f[0], f[1], f[2], f[3]),
     'F': f => keep(terms, facts, f),
     't': f => { const el = byId('levelspan-' + f[0]); if (el) el.textContent = f[1]; },
+    'c': f => {
+      document.documentElement.dataset.palette = f[0];
+      document.documentElement.style.setProperty('--ground', f[1]);
+    },
     'T': f => { document.title = f[0]; },
     'l': f => announce('levelspan-' + f[0], f[1]),
   };
