@@ -83,7 +83,8 @@ func xvfb(t *testing.T) string {
 	if err != nil {
 		t.Fatal(err)
 	}
-	cmd := exec.Command("Xvfb", "-displayfd", "3", "-screen", "0", "1400x900x24", "-nolisten", "tcp")
+	// Without -noreset the display begins anew whenever its last client leaves, which xdotool does before the window comes.
+	cmd := exec.Command("Xvfb", "-displayfd", "3", "-screen", "0", "1400x900x24", "-nolisten", "tcp", "-noreset")
 	cmd.ExtraFiles = []*os.File{write}
 	if err := cmd.Start(); err != nil {
 		t.Fatal(err)
