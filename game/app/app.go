@@ -91,17 +91,26 @@ type view struct {
 // noticeTime is how long a notice stays.
 const noticeTime = 4 * time.Second
 
-// New starts the program with a case file's bytes (the embedded demo's, if nil). A file that cannot be read leaves the demo
-// in place and says why.
+// New starts the program with a case file's bytes (the embedded demo's, if nil), and keeps nothing. A file that cannot be
+// read leaves the demo in place and says why.
 func New(host Host, caseFile []byte) *App {
-	a := &App{host: host, fields: newFieldTable()}
+	o := Options{Host: host}
+	if caseFile != nil {
+		o.Open = &Opened{Data: caseFile}
+	}
+	return NewWith(o)
+}
+
+// NewWith starts the program as the options say.
+func NewWith(o Options) *App {
+	a := &App{host: o.Host, fields: newFieldTable()}
 	c, _, err := casefile.Parse(democase.JSON())
 	if err != nil { // a fault of the build: the tests parse the demo
 		panic("app: the embedded demo case does not parse: " + err.Error())
 	}
 	a.doc = newDocument(c)
-	if caseFile != nil {
-		a.open(Opened{Data: caseFile})
+	if o.Open != nil {
+		a.open(*o.Open)
 		a.doc.past = nil
 		a.view.notice, a.view.status = "", ""
 	}
