@@ -235,24 +235,25 @@ func (rl *Rail) zone(f *Frame, area scene.Rect, z *RailZone) {
 	}
 	low := math.Min(math.Max(0, z.FadeLow), z.To-z.From)
 	top := math.Min(math.Max(0, z.FadeTop), z.To-z.From-low)
-	clear := Fade(z.Color, 0)
+	color := Over(z.Color, f.Theme.Background) // opaque, so that the track does not show through as a stripe
+	clear := Fade(color, 0)
 	if low > 0 {
 		r := rl.span(area, z.From, z.From+low, zoneWidth)
 		if rl.Vertical {
-			f.Scene.Gradient(r, z.Color, clear, true)
+			f.Scene.Gradient(r, color, clear, true)
 		} else {
-			f.Scene.Gradient(r, clear, z.Color, false)
+			f.Scene.Gradient(r, clear, color, false)
 		}
 	}
 	if z.To-z.From > low+top {
-		f.Scene.FillRect(rl.span(area, z.From+low, z.To-top, zoneWidth), 0, z.Color)
+		f.Scene.FillRect(rl.span(area, z.From+low, z.To-top, zoneWidth), 0, color)
 	}
 	if top > 0 {
 		r := rl.span(area, z.To-top, z.To, zoneWidth)
 		if rl.Vertical {
-			f.Scene.Gradient(r, clear, z.Color, true)
+			f.Scene.Gradient(r, clear, color, true)
 		} else {
-			f.Scene.Gradient(r, z.Color, clear, false)
+			f.Scene.Gradient(r, color, clear, false)
 		}
 	}
 }
