@@ -15,6 +15,7 @@ type options struct {
 	wasm    string // a program already compiled, or ""
 	version string // or "" to describe it
 	brotli  bool
+	slim    bool // see slim.go
 }
 
 // build writes levelspan.html and site into the directory and prints their sizes.
@@ -30,7 +31,7 @@ func build(ctx context.Context, o options, out io.Writer) error {
 	if o.wasm != "" {
 		p.Wasm, err = os.ReadFile(o.wasm)
 	} else {
-		p.Wasm, err = compile(ctx)
+		p.Wasm, err = compile(ctx, o.slim)
 	}
 	if err != nil {
 		return err

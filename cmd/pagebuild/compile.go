@@ -11,20 +11,38 @@ import (
 	"strings"
 )
 
-// compile builds ./wasm for the browser and gives its bytes.
-func compile(ctx context.Context) ([]byte, error) {
+// compile builds ./wasm for the browser and gives its bytes. Slim leaves out what the drawing library makes the linker
+// keep for nothing (see slim.go).
+func compile(ctx context.Context, slim bool) ([]byte, error) {
+	return compileProgram(ctx, "levelspan/wasm", slim)
+}
+
+func compileProgram(ctx context.Context, program string, slim bool) ([]byte, error) {
 	dir, err := os.MkdirTemp("", "pagebuild")
 	if err != nil {
 		return nil, err
 	}
 	defer os.RemoveAll(dir)
 	file := filepath.Join(dir, "levelspan.wasm")
-	cmd := exec.CommandContext(ctx, "go", "build", "-trimpath", "-buildvcs=false", "-ldflags=-s -w", "-o", file, "levelspan/wasm")
-	cmd.Env = append(os.Environ(), "GOOS=js", "GOARCH=wasm", "CGO_ENABLED=0")
+	args := []string{"build", "-trimpath", "-buildvcs=false", "-ldflags=-s -w", "-o", file}
+	if slim {
+		mod, err := slimModule(ctx, dir, program)
+		if err != nil {
+			return nil, err
+		}
+		args = append(args, "-modfile="+mod)
+	}
+	cmd := exec.CommandContext(ctx, "go", append(args, program)...)
+	cmd.Env = browserEnv()
 	if said, err := cmd.CombinedOutput(); err != nil {
 		return nil, fmt.Errorf("compiling the program: %w\n%s", err, said)
 	}
 	return os.ReadFile(file)
+}
+
+// browserEnv is the environment in which the go command builds for the browser.
+func browserEnv() []string {
+	return append(os.Environ(), "GOOS=js", "GOARCH=wasm", "CGO_ENABLED=0")
 }
 
 // wasmExec is the toolchain's own loader. It must come from the toolchain that compiled the program.

@@ -22,6 +22,7 @@ func doMain(args []string, out, errs io.Writer) int {
 	wasm := flags.String("wasm", "", "a program already compiled, instead of ./wasm")
 	version := flags.String("version", "", "version shown (default: git describe, else \"dev\")")
 	withBrotli := flags.Bool("brotli", true, "also compress for hosting with the brotli command, if it is there; slow")
+	slim := flags.Bool("slim", true, "link the program with the drawing library's shaders made beforehand: a quarter smaller")
 	serve := flags.String("serve", "", "serve OUT/site on this loopback address instead of building, such as 127.0.0.1:8080")
 	open := flags.Bool("open", false, "with -serve: open a browser where there is one")
 	seconds := flags.Int("seconds", 0, "with -serve: stop after so many seconds (0: until interrupted)")
@@ -38,7 +39,7 @@ func doMain(args []string, out, errs io.Writer) int {
 	if *serve != "" {
 		err = serveSite(ctx, *dir+"/site", *serve, *seconds, *open, out)
 	} else {
-		err = build(ctx, options{dir: *dir, wasm: *wasm, version: *version, brotli: *withBrotli}, out)
+		err = build(ctx, options{dir: *dir, wasm: *wasm, version: *version, brotli: *withBrotli, slim: *slim}, out)
 	}
 	if err != nil {
 		fmt.Fprintln(errs, "pagebuild:", err)
