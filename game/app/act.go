@@ -92,8 +92,16 @@ func (a *App) tap(act *ui.Action) {
 	case "redo":
 		a.redo()
 	case "share":
+		a.tapShare(rest)
+	case "cases", "case", "removed":
+		a.tapCases(act, head, rest)
+	case "paste":
+		a.tapPaste(rest)
+	case "conflict":
 		a.closeOverlay()
-		a.share()
+		if rest == "other" {
+			a.takeOther()
+		}
 	case "open":
 		a.closeOverlay()
 		a.host.OpenFile()
@@ -105,12 +113,17 @@ func (a *App) tap(act *ui.Action) {
 		a.view.menu.Scroll = ui.Scroller{}
 	case "cautions":
 		a.openDialog("Cautions", true, append(append([]string(nil), a.mirror.Warnings...), a.standingCautions()...)...)
+		if a.kept.trouble != nil {
+			a.view.dialog.Buttons = append(a.view.dialog.Buttons, ui.Button{ID: "save", Text: "Save a file", Kind: ui.Framed}, ui.Button{ID: "share/text", Text: "Copy as text", Kind: ui.Framed})
+		}
 	case "about":
 		a.openAbout()
 	case "palette":
-		a.view.night = rest == "night"
-	case "dialog", "menu-list":
-		a.closeOverlay()
+		a.view.night, a.view.palette = rest == "night", true
+	case "dialog", "menu-list", "share-list", "sheet", "code":
+		if rest != "" && rest != "text" { // not the text or list itself
+			a.closeOverlay()
+		}
 	case "failure":
 		if n := len(a.view.failures); n > 0 {
 			a.view.failures = a.view.failures[:n-1]
@@ -259,6 +272,10 @@ func (v *view) scroller(id string) *ui.Scroller {
 		return &v.forms[formToday].Scroll
 	case "menu-list":
 		return &v.menu.Scroll
+	case "share-list":
+		return &v.shareMenu.Scroll
+	case "sheet":
+		return &v.sheet.Scroll
 	case "dialog/text":
 		return &v.dialog.Scroll
 	}
@@ -284,6 +301,10 @@ func (a *App) press(act *ui.Action) {
 }
 
 func (a *App) closeOverlay() {
+	if a.view.overlay == overlayCases || a.view.overlay == overlayPaste {
+		a.endText()
+		a.view.cases.renaming = ""
+	}
 	a.view.overlay = overlayNone
 	a.view.pad.Close()
 	a.dirty = true

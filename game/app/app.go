@@ -4,7 +4,6 @@ import (
 	"math"
 	"time"
 
-	"levelspan/assets/case"
 	"levelspan/game/scene"
 	"levelspan/game/ui"
 	"levelspan/perf"
@@ -15,10 +14,12 @@ import (
 
 // App is the program. Make it with New.
 type App struct {
-	host   Host
-	fields fieldTable
+	host       Host
+	hostedBase string
+	fields     fieldTable
 
 	doc     document
+	kept    kept
 	solved  solved
 	ranges  ranges
 	scratch perf.Solver
@@ -64,6 +65,7 @@ type view struct {
 	today    bool // the Today part of the Aeroplane screen, where only one part is shown
 	night    bool
 	themed   bool // the palette has been decided
+	palette  bool // the person decided it
 	selected perf.Key
 	marked   bool // selected holds
 
@@ -71,12 +73,17 @@ type view struct {
 	pad     pad
 	dialog  ui.Dialog
 
-	menu    ui.Menu
-	panel   ui.Scroller
-	forms   [2]form // the aeroplane's, today's
-	helped  string  // path of the field whose help is open
-	refused string  // path of the field whose entry was refused, and why
-	refusal string
+	menu      ui.Menu
+	shareMenu ui.Menu
+	sheet     ui.Sheet // of cases, or to paste in
+	cases     casesSheet
+	pasteWhy  string // why the clipboard was not read, "" it was not tried
+	code      shareCode
+	panel     ui.Scroller
+	forms     [2]form // the aeroplane's, today's
+	helped    string  // path of the field whose help is open
+	refused   string  // path of the field whose entry was refused, and why
+	refusal   string
 
 	text       ui.TextEdit // the free text that is being edited, ID "" none
 	textBefore string
@@ -104,11 +111,9 @@ func New(host Host, caseFile []byte) *App {
 // NewWith starts the program as the options say.
 func NewWith(o Options) *App {
 	a := &App{host: o.Host, fields: newFieldTable()}
-	c, _, err := casefile.Parse(democase.JSON())
-	if err != nil { // a fault of the build: the tests parse the demo
-		panic("app: the embedded demo case does not parse: " + err.Error())
-	}
-	a.doc = newDocument(c)
+	a.doc = newDocument(demo())
+	a.startKept(&o)
+	a.hostedBase = o.HostedBase
 	if o.Open != nil {
 		a.open(*o.Open)
 		a.doc.past = nil
@@ -116,7 +121,7 @@ func NewWith(o Options) *App {
 	}
 	a.units = a.unitsNow()
 	a.view.menu = ui.Menu{ID: "menu-list", Label: "Menu"}
-	a.takeSelection()
+	a.view.shareMenu = ui.Menu{ID: "share-list", Label: "Share"}
 	a.dirty = true
 	return a
 }
@@ -139,6 +144,13 @@ func (a *App) Step(in Input) bool {
 		a.dirty = true
 	}
 	a.takeEvents(in.Events)
+	if in.StoreChanged {
+		a.kept.check = true
+		a.refreshCases()
+	}
+	if a.dirty || a.kept.check {
+		a.keepChanges()
+	}
 	if a.view.notice != "" && a.now >= a.view.noticeUntil {
 		a.view.notice = ""
 		a.dirty = true
@@ -151,6 +163,9 @@ func (a *App) Step(in Input) bool {
 	a.solved.refresh(&a.doc)
 	a.ranges.refresh(&a.doc, a.speedKind(), &a.scratch)
 	a.draw()
+	if a.router.Settle(a.frame.Controls) {
+		a.draw()
+	}
 	a.describe()
 	return true
 }

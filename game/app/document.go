@@ -20,12 +20,14 @@ type document struct {
 	revision  uint64         // rises with every change of current
 	run       string         // the run that the last step belongs to, "" none
 	shape     uint64         // rises when more than today's mass and air may have changed
+	kept      string         // the name that the committed case is kept under, "" none yet
 }
 
 // step is one change that can be undone.
 type step struct {
 	what string         // in words: "weight", "wing area"
 	doc  *casefile.Case // the case on the other side of the step
+	kept string         // the name that it is kept under
 }
 
 func newDocument(c *casefile.Case) document {
@@ -60,13 +62,30 @@ func (d *document) nameLast(what string) {
 	}
 }
 
-// replace puts a whole other case in place, as one step that can be undone.
-func (d *document) replace(what string, next *casefile.Case) {
+// replace puts a whole other case in place, kept under a name of its own, as one step that can be undone.
+func (d *document) replace(what string, next *casefile.Case, kept string) {
 	d.settle("")
-	d.commit(what, next)
+	if kept == d.kept {
+		d.commitRun(what, "", next)
+		return
+	}
+	d.push(what, "", next)
+	d.kept = kept
 }
 
-func (d *document) commit(what string, next *casefile.Case) { d.commitRun(what, "", next) }
+// rename says that what was kept under one name is kept under another, now and in every step.
+func (d *document) rename(from, to string) {
+	if d.kept == from {
+		d.kept = to
+	}
+	for _, steps := range [...][]step{d.past, d.future} {
+		for i := range steps {
+			if steps[i].kept == from {
+				steps[i].kept = to
+			}
+		}
+	}
+}
 
 func (d *document) commitRun(what, run string, next *casefile.Case) {
 	if bytes.Equal(next.Marshal(), d.committed.Marshal()) {
@@ -79,8 +98,13 @@ func (d *document) commitRun(what, run string, next *casefile.Case) {
 	if len(next.Runs) > 0 && reflect.DeepEqual(next.Runs, d.committed.Runs) {
 		next.Runs = d.committed.Runs // committed cases are not changed in place: many steps can share many runs
 	}
+	d.push(what, run, next)
+}
+
+// push makes next the committed case, and the one before it a step back.
+func (d *document) push(what, run string, next *casefile.Case) {
 	if run == "" || run != d.run || len(d.past) == 0 {
-		d.past = append(d.past, step{what, d.committed})
+		d.past = append(d.past, step{what, d.committed, d.kept})
 	}
 	d.run = run
 	if len(d.past) > historyDepth {
@@ -146,8 +170,8 @@ func (d *document) travel(from, to *[]step) string {
 	}
 	s := (*from)[n-1]
 	*from = (*from)[:n-1]
-	*to = append(*to, step{s.what, d.committed})
-	d.committed, d.current = s.doc, s.doc
+	*to = append(*to, step{s.what, d.committed, d.kept})
+	d.committed, d.current, d.kept = s.doc, s.doc, s.kept
 	d.revision++
 	d.shape++
 	return s.what

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"bytes"
 	"errors"
 	"strings"
 	"unicode"
@@ -17,31 +18,27 @@ const caseMIME = "application/json"
 func (a *App) open(o Opened) {
 	a.cancelDrags()
 	a.endText()
+	if o.Pasted && (o.Err != "" || strings.TrimSpace(o.Text) == "") {
+		a.openPaste(o.Err)
+		return
+	}
 	a.closeOverlay()
 	if o.Err != "" {
 		a.refuseCase(o, errors.New(o.Err))
 		return
 	}
-	var c *casefile.Case
-	var warnings []casefile.Warning
-	var err error
-	if o.Link != "" {
-		c, warnings, err = casefile.ParseFragment(o.Link)
-	} else {
-		c, warnings, err = casefile.Parse(o.Data)
-	}
+	c, warnings, err := read(o)
 	if err != nil {
 		a.refuseCase(o, err)
 		return
 	}
-	a.doc.replace("opening of "+c.Aeroplane.Name, c)
-	a.units = a.unitsNow()
-	a.takeSelection()
-	a.view.panel.Y = 0
-	for i := range a.view.forms {
-		a.view.forms[i].Scroll = ui.Scroller{}
+	name := a.nameFor(c)
+	a.show("opening of "+c.Aeroplane.Name, c, name)
+	if name == c.Aeroplane.Name {
+		a.notify("Opened " + name)
+	} else {
+		a.notify("Opened " + c.Aeroplane.Name + ", kept as " + name)
 	}
-	a.notify("Opened " + c.Aeroplane.Name)
 	if len(warnings) > 0 {
 		lines := []string{"These entries are kept and saved again, but not used:"}
 		for i := range warnings {
@@ -52,6 +49,31 @@ func (a *App) open(o Opened) {
 	a.dirty = true
 }
 
+// resetScrolls puts every list at its beginning.
+func (a *App) resetScrolls() {
+	a.view.panel.Y = 0
+	for i := range a.view.forms {
+		a.view.forms[i].Scroll = ui.Scroller{}
+	}
+}
+
+// read reads what arrived. A text, and a file that holds one, is a case file or a link, whichever it looks like.
+func read(o Opened) (*casefile.Case, []casefile.Warning, error) {
+	text := o.Text
+	switch {
+	case o.Link != "":
+		return casefile.ParseFragment(o.Link)
+	case text == "" && bytes.Contains(o.Data, []byte("#case=")) && !bytes.HasPrefix(bytes.TrimSpace(o.Data), []byte("{")):
+		text = string(o.Data)
+	case text == "":
+		return casefile.Parse(o.Data)
+	}
+	if text = strings.TrimSpace(text); strings.HasPrefix(text, "{") {
+		return casefile.Parse([]byte(text))
+	}
+	return casefile.ParseFragment(text)
+}
+
 // refuseCase says why a file or link was not opened.
 func (a *App) refuseCase(o Opened, err error) {
 	title, lines := "This case cannot be opened", []string(nil)
@@ -59,6 +81,8 @@ func (a *App) refuseCase(o Opened, err error) {
 	switch {
 	case o.Link != "":
 		what = "The link"
+	case o.Text != "":
+		what = "The text"
 	case o.Name != "":
 		what = o.Name
 	}
@@ -96,16 +120,6 @@ func (a *App) presentCase() *casefile.Case {
 		c.Display.Selected = a.view.selected.String()
 	}
 	return c
-}
-
-// share copies the link that opens this case, or its fragment alone where the program has no address.
-func (a *App) share() {
-	a.cancelDrags()
-	text := a.presentCase().Fragment()
-	if base := a.host.LinkBase(); base != "" {
-		text = base + "#case=" + text
-	}
-	a.host.Copy("link", text)
 }
 
 // save offers the case file.

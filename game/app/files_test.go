@@ -113,6 +113,7 @@ func TestShareLinkRoundTrip(t *testing.T) {
 	p.setSlider(handleMass, 688)
 	p.tap("limit/best_glide")
 	p.tap("share")
+	p.tap("share/link")
 	if len(p.host.copied) != 1 {
 		t.Fatalf("%d texts were copied", len(p.host.copied))
 	}

@@ -44,9 +44,16 @@ func (a *App) drawHeader(f *ui.Frame) {
 	name := ui.Ellipsis(scene.Title, c.Aeroplane.Name, bar.W)
 	w := scene.Measure(scene.Title, name)
 	f.Label(scene.Title, bar, scene.Left, name, t.Ink)
-	if room := bar.W - w - 14; room > 60 && c.Aeroplane.Note != "" {
+	aside := c.Aeroplane.Note
+	if a.doc.kept != "" && a.doc.kept != c.Aeroplane.Name {
+		aside = "kept as " + a.doc.kept
+		if c.Aeroplane.Note != "" {
+			aside += " · " + c.Aeroplane.Note
+		}
+	}
+	if room := bar.W - w - 14; room > 60 && aside != "" {
 		note := scene.Rect{X: bar.X + w + 14, Y: bar.Y + 1, W: room, H: bar.H}
-		f.Label(scene.Small, note, scene.Left, c.Aeroplane.Note, t.Muted)
+		f.Label(scene.Small, note, scene.Left, aside, t.Muted)
 	}
 }
 
@@ -56,7 +63,7 @@ func (a *App) tools(r scene.Rect) (tools []ui.Button, cells []scene.Rect, rest s
 	tools = []ui.Button{
 		{ID: "undo", Icon: ui.IconUndo, Label: named("Undo", undo), Disabled: undo == ""},
 		{ID: "redo", Icon: ui.IconRedo, Label: named("Redo", redo), Disabled: redo == ""},
-		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share: copy the link", Bold: true},
+		{ID: "share", Text: "Share", Icon: ui.IconShare, Label: "Share", Bold: true},
 		{ID: "menu", Icon: ui.IconMenu, Label: "Menu"},
 	}
 	if a.layout.format == phone && a.layout.low { // the menu has it too

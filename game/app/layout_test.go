@@ -70,6 +70,12 @@ var views = map[string]func(p *pilot){
 	},
 }
 
+func init() {
+	for name, show := range sheetViews {
+		views[name] = show
+	}
+}
+
 func TestNothingOverlapsOrIsCutOff(t *testing.T) {
 	for _, w := range windows {
 		for name, show := range views {
@@ -78,7 +84,7 @@ func TestNothingOverlapsOrIsCutOff(t *testing.T) {
 			p.in.Now += noticeTime // notices lie over other things
 			p.step()
 			at := fmt.Sprintf("%s in %gx%g", name, w.Width, w.Height)
-			all := texts(p.app.Scene(), 0)
+			all := texts(p.app.Scene(), p.overlaid())
 			for i, a := range all {
 				if ui.Intersect(a.box, a.clip).H <= 0 {
 					continue // scrolled out of sight

@@ -17,6 +17,10 @@ const (
 	overlayKeypad
 	overlayMenu
 	overlayDialog
+	overlayShare
+	overlayCode // the QR code
+	overlayCases
+	overlayPaste
 )
 
 // dialogOf is a message that waits to be read.
@@ -52,8 +56,9 @@ func (a *App) menuGroups() []ui.MenuGroup {
 		return g
 	}
 	return []ui.MenuGroup{
-		{Items: []ui.Button{{ID: "open", Text: "Open a case file…", Icon: ui.IconOpen}, {ID: "save", Text: "Save the case file", Icon: ui.IconSave},
-			{ID: "share", Text: "Copy the link of this case", Icon: ui.IconShare}}},
+		{Items: []ui.Button{{ID: "cases", Text: "Cases…", Icon: ui.IconCases}, {ID: "open", Text: "Open a case file…", Icon: ui.IconOpen},
+			{ID: "paste", Text: "Paste a link or case text…", Icon: ui.IconPaste}, {ID: "save", Text: "Save the case file", Icon: ui.IconSave},
+			{ID: "share", Text: "Share…", Icon: ui.IconShare}}},
 		{Title: "Palette", Choices: []ui.Choice{{ID: "palette/day", Text: "Day", Selected: !a.view.night}, {ID: "palette/night", Text: "Night", Selected: a.view.night}}},
 		group("Speed", "speed", u.Speed.Name, "kt", "mph", "km/h"),
 		group("Height", "altitude", u.Altitude.Name, "ft", "m"),
@@ -75,6 +80,18 @@ func (a *App) drawOverlay(f *ui.Frame) {
 		a.view.menu.Draw(f, w, s, a.boundsOf("menu"), a.menuGroups())
 	case overlayDialog:
 		a.view.dialog.Draw(f, w, s)
+	case overlayShare:
+		at := a.boundsOf("share")
+		if at.W == 0 {
+			at = a.boundsOf("menu")
+		}
+		a.view.shareMenu.Draw(f, w, s, at, a.shareGroups())
+	case overlayCode:
+		a.drawCode(f)
+	case overlayCases:
+		a.drawCases(f)
+	case overlayPaste:
+		a.drawPaste(f)
 	}
 }
 

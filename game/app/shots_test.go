@@ -7,6 +7,7 @@ import (
 	"path/filepath"
 	"testing"
 
+	"levelspan/game/keep"
 	"levelspan/game/scene/raster"
 	"levelspan/game/ui"
 )
@@ -79,6 +80,18 @@ var shotViews = []struct {
 		p.tap("key/point")
 		p.tap("key/1")
 		p.tap("key/ok")
+	}},
+	{"share", sheetViews["share"]},
+	{"code", sheetViews["code"]},
+	{"cases", sheetViews["cases"]},
+	{"cases-more", sheetViews["cases-more"]},
+	{"rename", sheetViews["rename"]},
+	{"delete", sheetViews["delete"]},
+	{"paste", sheetViews["paste"]},
+	{"conflict", sheetViews["conflict"]},
+	{"not-kept", func(p *pilot) {
+		p.filled().err = keep.ErrFull
+		p.setSlider(handleMass, 640)
 	}},
 	{"damaged", func(p *pilot) {
 		p.step(Opened{Name: "marram.json", Data: []byte("{\"format\": \"levelspan-case\", \"version\": 1,")})

@@ -29,6 +29,9 @@ func (a *App) cautions() []string {
 			texts = append(texts, c.Text())
 		}
 	}
+	if text := a.troubleText(); text != "" {
+		texts = append(texts, text)
+	}
 	return texts
 }
 

@@ -77,12 +77,18 @@ func (a *App) pressText(act *ui.Action) bool {
 	}
 	switch a.view.text.Handle(*act) {
 	case ui.TextChanged:
-		a.putText()
+		a.textChanged()
 	case ui.TextMoved:
 		a.dirty = true
 	case ui.TextDone:
+		if a.entered() {
+			return true
+		}
 		a.endText()
 	case ui.TextCancelled:
+		if a.view.overlay != overlayNone { // of a sheet: Escape closes it
+			return false
+		}
 		a.view.text.Set(a.view.textBefore)
 		a.putText()
 		a.endText()
@@ -94,16 +100,46 @@ func (a *App) pressText(act *ui.Action) bool {
 
 // typed takes a text that the outside changed.
 func (a *App) typed(act *ui.Action) {
-	if a.view.text.ID != act.ID {
+	if a.view.text.ID != act.ID && a.view.overlay == overlayNone {
 		a.beginText(strings.TrimPrefix(act.ID, "field/"), nil)
 	}
 	if a.view.text.ID == act.ID && a.view.text.Handle(*act) == ui.TextChanged {
+		a.textChanged()
+	}
+}
+
+// textChanged takes in a changed text: of a field into the case, of a sheet as what has been entered so far.
+func (a *App) textChanged() {
+	a.dirty = true
+	switch a.view.text.ID {
+	case entryName:
+		a.view.cases.refusal = ""
+	case entryPaste:
+		a.pasteChanged()
+	default:
 		a.putText()
 	}
 }
 
+// entered takes Enter in a text of a sheet and reports whether it was in one.
+func (a *App) entered() bool {
+	switch a.view.text.ID {
+	case entryName:
+		a.renameCase()
+	case entryPaste:
+		a.pasteOpen()
+	default:
+		return false
+	}
+	return true
+}
+
 // focused begins or ends the editing of a text as the focus comes and goes.
 func (a *App) focused(act *ui.Action) {
+	if a.view.overlay == overlayCases || a.view.overlay == overlayPaste { // the text of a sheet stays as long as the sheet
+		a.revealFocus(act.ID)
+		return
+	}
 	if a.view.text.ID != "" && act.ID != a.view.text.ID {
 		a.endText()
 	}

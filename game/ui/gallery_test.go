@@ -169,7 +169,7 @@ func drawKit(f *Frame, r scene.Rect) {
 	_, rest = CutTop(rest, 20)
 	row, rest = CutTop(rest, 2*56)
 	for i := IconUndo; i < IconCount; i++ {
-		c := Cell(row, 12, 2, int(i-1)%12, int(i-1)/12, 4)
+		c := Cell(row, 15, 2, int(i-1)%15, int(i-1)/15, 4)
 		f.Box(c, 8, f.Theme.Key, f.Theme.Edge)
 		f.Icon(i, c, 28, f.Theme.Ink)
 	}

@@ -34,6 +34,13 @@ const (
 	IconSave
 	IconEdit
 	IconRemove
+	IconCases
+	IconPaste
+	IconCode
+	IconText
+	IconMore
+	IconCopy
+	IconSend
 	IconCount
 )
 
@@ -67,11 +74,20 @@ var icons = [IconCount][]stroke{
 		{pts: pts(4.5, 15, 4.5, 20, 19.5, 20, 19.5, 15)}},
 	IconEdit:   {{closed: true, pts: pts(4, 20, 5, 15.5, 16, 4.5, 19.5, 8, 8.5, 19)}, {pts: pts(13.5, 7, 17, 10.5)}},
 	IconRemove: {{pts: pts(4, 6.5, 20, 6.5)}, {pts: pts(9, 6.5, 9, 4, 15, 4, 15, 6.5)}, {pts: pts(6, 6.5, 7, 20, 17, 20, 18, 6.5)}},
-	IconUndo:   {{pts: arc(12.5, 13, 7, -150, 130)}, {pts: pts(5.2, 3.8, 6.2, 9.8, 12, 8.4)}},
-	IconRedo:   {{pts: arc(11.5, 13, 7, -30, -310)}, {pts: pts(18.8, 3.8, 17.8, 9.8, 12, 8.4)}},
-	IconSun:    sun(),
-	IconMoon:   {{closed: true, pts: moon()}},
-	IconHelp:   {{pts: append(arc(12, 9, 4, -180, 60), scene.Point{X: 12, Y: 13.6}, scene.Point{X: 12, Y: 15.4})}, {pts: pts(12, 18.2, 12, 20)}},
+	IconCases:  {{closed: true, pts: pts(4, 9, 20, 9, 20, 20, 4, 20)}, {pts: pts(6, 5.8, 18, 5.8)}, {pts: pts(8, 2.8, 16, 2.8)}},
+	IconPaste:  {{pts: pts(8, 5, 5, 5, 5, 20.5, 19, 20.5, 19, 5, 16, 5)}, {closed: true, pts: pts(8.5, 3, 15.5, 3, 15.5, 7, 8.5, 7)}},
+	IconCode: {{closed: true, pts: pts(4, 4, 10, 4, 10, 10, 4, 10)}, {closed: true, pts: pts(14, 4, 20, 4, 20, 10, 14, 10)},
+		{closed: true, pts: pts(4, 14, 10, 14, 10, 20, 4, 20)}, {pts: pts(14, 14, 16, 14)}, {pts: pts(18, 14, 20.5, 14)}, {pts: pts(16, 17, 18, 17)},
+		{pts: pts(14, 20, 16, 20)}, {pts: pts(18.5, 20, 20.5, 20)}},
+	IconText: {{closed: true, pts: pts(5, 3.5, 19, 3.5, 19, 20.5, 5, 20.5)}, {pts: pts(8.5, 8.5, 15.5, 8.5)}, {pts: pts(8.5, 12, 15.5, 12)}, {pts: pts(8.5, 15.5, 13, 15.5)}},
+	IconMore: {{pts: pts(10.9, 5, 13.1, 5)}, {pts: pts(10.9, 12, 13.1, 12)}, {pts: pts(10.9, 19, 13.1, 19)}},
+	IconCopy: {{closed: true, pts: pts(9, 8, 20, 8, 20, 20.5, 9, 20.5)}, {pts: pts(15, 8, 15, 3.5, 4, 3.5, 4, 16, 9, 16)}},
+	IconSend: {{pts: pts(4, 12, 19, 12)}, {pts: pts(13, 6, 19, 12, 13, 18)}},
+	IconUndo: {{pts: arc(12.5, 13, 7, -150, 130)}, {pts: pts(5.2, 3.8, 6.2, 9.8, 12, 8.4)}},
+	IconRedo: {{pts: arc(11.5, 13, 7, -30, -310)}, {pts: pts(18.8, 3.8, 17.8, 9.8, 12, 8.4)}},
+	IconSun:  sun(),
+	IconMoon: {{closed: true, pts: moon()}},
+	IconHelp: {{pts: append(arc(12, 9, 4, -180, 60), scene.Point{X: 12, Y: 13.6}, scene.Point{X: 12, Y: 15.4})}, {pts: pts(12, 18.2, 12, 20)}},
 }
 
 func pts(v ...float64) []scene.Point {

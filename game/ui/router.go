@@ -70,6 +70,14 @@ func (r *Router) Route(dst []Action, events []Event, controls []Control, now tim
 	return r.coast(dst, controls, top, now)
 }
 
+// Settle brings the focus into the layer that the controls of a new frame have on top, or back out of one that closed. It
+// reports whether a visible focus moved, so that the frame is to be drawn again.
+func (r *Router) Settle(controls []Control) bool {
+	old := r.Focus
+	r.relayer(controls, topLayer(controls))
+	return r.Focus != old && r.FocusVisible
+}
+
 // Pressed is the ID of the control under a pressed pointer, "" none: draw it pressed. With several fingers it is one
 // of them; IsPressed knows each.
 func (r *Router) Pressed() string {
