@@ -28,6 +28,7 @@ type Surface struct {
 	canvas  *ebiten.Image
 	dirty   bool
 	dead    bool
+	left    bool
 
 	width, height, scale float64
 }
@@ -52,10 +53,13 @@ func (s *Surface) Run(title string) error {
 // Wake asks for a frame. It may be called from any goroutine.
 func Wake() { ebiten.ScheduleFrame() }
 
+// Leave makes the surface ask for no more frames and draw no more: another shows the scenes from now on.
+func (s *Surface) Leave() { s.left = true }
+
 // Update is ebiten's tick: one a frame.
 func (s *Surface) Update() (err error) {
 	defer s.guard()
-	if s.dead || s.width <= 0 || s.height <= 0 {
+	if s.dead || s.left || s.width <= 0 || s.height <= 0 {
 		return nil
 	}
 	if next := s.frame(s.width, s.height, s.scale); next != nil {
@@ -68,7 +72,7 @@ func (s *Surface) Update() (err error) {
 // ebiten turns that upside down and not the clips with it, and under SwiftShader the copy made no measurable difference.)
 func (s *Surface) Draw(screen *ebiten.Image) {
 	defer s.guard()
-	if s.shown == nil || !s.dirty && s.canvas == screen {
+	if s.left || s.shown == nil || !s.dirty && s.canvas == screen {
 		return
 	}
 	s.canvas, s.dirty = screen, false

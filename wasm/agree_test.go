@@ -42,6 +42,7 @@ func (b *tab) fragment() string {
 	b.t.Helper()
 	eval[bool](b, "document.getElementById('levelspan-copied').textContent = '', true")
 	b.clickOn("share")
+	b.clickOn("share/link")
 	b.until("document.getElementById('levelspan-copied').textContent")
 	_, fragment, found := strings.Cut(eval[string](b, "document.getElementById('levelspan-copied').textContent"), "#case=")
 	if !found {

@@ -27,6 +27,14 @@ func (b *bridge) wake() { b.call("wake") }
 // fail covers the page.
 func (b *bridge) fail(why string) { b.call("fail", why) }
 
+// listen makes the page's call of a name call f.
+func (b *bridge) listen(name string, f func()) {
+	b.object.Set(name, js.FuncOf(func(js.Value, []js.Value) any {
+		f()
+		return nil
+	}))
+}
+
 // drain empties the queue into the input.
 func (b *bridge) drain(in *app.Input) {
 	count := b.call("drain").Int()
@@ -79,3 +87,14 @@ func (h *host) LinkBase() string { return h.bridge.call("base").String() }
 
 // Version is that of the page, with the hash of all that is in it.
 func (h *host) Version() string { return h.version }
+
+// Paste reads the clipboard.
+func (h *host) Paste() { h.bridge.call("paste") }
+
+// CanShare reports whether the browser has a share sheet.
+func (h *host) CanShare() bool { return h.bridge.call("canshare").Bool() }
+
+// Share shows it.
+func (h *host) Share(s app.Shared) {
+	h.bridge.call("share", s.Title, s.Text, s.Link, s.FileName, s.MIME, s.File)
+}

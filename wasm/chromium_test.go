@@ -20,6 +20,7 @@ import (
 	"github.com/chromedp/cdproto/emulation"
 	"github.com/chromedp/cdproto/input"
 	"github.com/chromedp/cdproto/network"
+	"github.com/chromedp/cdproto/page"
 	"github.com/chromedp/chromedp"
 )
 
@@ -136,7 +137,7 @@ func newTab(t *testing.T, width, height int, scale float64, touch bool) *tab {
 	if browser.err != nil {
 		t.Fatal(browser.err)
 	}
-	ctx, stop := chromedp.NewContext(browser.ctx)
+	ctx, stop := chromedp.NewContext(browser.ctx, chromedp.WithNewBrowserContext())
 	ctx, stopTime := context.WithTimeout(ctx, 4*time.Minute)
 	t.Cleanup(func() { stopTime(); stop() })
 	b := &tab{t: t, ctx: ctx}
@@ -193,6 +194,13 @@ func (b *tab) until(expression string) {
 		}
 		time.Sleep(20 * time.Millisecond)
 	}
+}
+
+// before runs a script before those of every page to come.
+func (b *tab) before(script string) {
+	b.t.Helper()
+	_, err := chromedp.Call(b.ctx, page.AddScriptToEvaluateOnNewDocument, page.AddScriptToEvaluateOnNewDocumentParams{Source: script})
+	b.check(err)
 }
 
 // open goes to an address and waits for the first chart.

@@ -132,6 +132,7 @@ func TestScreenReader(t *testing.T) {
 	}
 	eval[bool](b, "navigator.clipboard.writeText = () => Promise.reject(new Error('refused')), document.execCommand = () => false, true")
 	b.activate("share")
+	b.activate("share/link")
 	b.until("!document.getElementById('levelspan-copy').hidden")
 	if text := eval[string](b, "document.querySelector('#levelspan-copy textarea').value"); !strings.Contains(text, "#case=") {
 		t.Errorf("shown to be copied: %q", text)

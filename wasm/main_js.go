@@ -2,11 +2,10 @@ package main
 
 import (
 	"os"
-	"syscall/js"
 	"time"
 
-	"levelspan/game"
 	"levelspan/game/app"
+	"levelspan/game/keep"
 	"levelspan/game/scene"
 )
 
@@ -17,24 +16,30 @@ func main() {
 	}
 	b := newBridge()
 	p := &page{bridge: b, mirror: newMirror()}
-	p.app = app.New(&host{bridge: b, version: version}, nil)
+	p.app = app.NewWith(app.Options{
+		Host:  &host{bridge: b, version: version},
+		Store: keep.NewKV(storage{b, "localStorage"}, storage{b, "sessionStorage"}, keep.Seconds),
+	})
 	b.call("adopt")
-	var show surface = &webgl{}
-	if err := show.run(p.frame, p.shown, b.fail); err != nil {
-		b.call("unavailable", err.Error())
-		select {} // the page says why; ending would say it a second time
+	if os.Getenv("SURFACE") == "webgl" {
+		if err := (&webgl{b}).run(p.frame, p.shown); err != nil {
+			b.call("lose") // the canvas of a surface that did not start goes
+		}
+		p.again, p.surface = true, ""
 	}
+	(&software{bridge: b}).run(p.frame, p.shown)
 }
 
 // page is what does not depend on the surface: the queue in, the program, the mirror out.
 type page struct {
-	bridge *bridge
-	app    *app.App
-	mirror *mirror
-	input  app.Input
-	focus  string
-	ready  bool
-	timer  *time.Timer
+	bridge  *bridge
+	app     *app.App
+	mirror  *mirror
+	input   app.Input
+	focus   string
+	again   bool   // the scene holds, but the surface is another
+	surface string // the one that has drawn
+	timer   *time.Timer
 }
 
 // frame takes the queue in and gives the scene to show, nil if the one shown still holds.
@@ -43,9 +48,10 @@ func (p *page) frame(width, height, scale float64) *scene.Scene {
 	p.input.Width, p.input.Height, p.input.Scale = width, height, scale
 	changed := p.app.Step(p.input)
 	p.sleep(p.app.Wake())
-	if !changed {
+	if !changed && !p.again {
 		return nil
 	}
+	p.again = false
 	show := p.app.Scene()
 	if patch := p.mirror.update(p.app.Controls(), p.app.Mirror(), show.Background); patch != "" {
 		p.bridge.call("patch", patch)
@@ -59,8 +65,8 @@ func (p *page) frame(width, height, scale float64) *scene.Scene {
 
 // shown is called by the surface when a scene has been drawn.
 func (p *page) shown(surface string) {
-	if !p.ready {
-		p.ready = true
+	if p.surface != surface {
+		p.surface = surface
 		p.bridge.call("ready", surface)
 	}
 }
@@ -76,28 +82,4 @@ func (p *page) sleep(d time.Duration) {
 	case d > 0:
 		p.timer = time.AfterFunc(d, p.bridge.wake)
 	}
-}
-
-// surface shows scenes until the page ends. Frames are asked of frame at the browser's pace, but only after the
-// bridge's wake; shown is told after each scene that has been drawn; failed is told of a panic.
-type surface interface {
-	run(frame game.Frame, shown func(name string), failed func(why string)) error
-}
-
-// webgl is ebiten's surface.
-type webgl struct{}
-
-func (*webgl) run(frame game.Frame, shown func(string), failed func(string)) error {
-	onWake(game.Wake)
-	s := game.NewSurface(frame, failed)
-	s.AfterDraw = func() { shown("webgl") }
-	return s.Run("levelspan")
-}
-
-// onWake makes the page's wake call f.
-func onWake(f func()) {
-	js.Global().Get("levelspan").Call("onwake", js.FuncOf(func(js.Value, []js.Value) any {
-		f()
-		return nil
-	}))
 }

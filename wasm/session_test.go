@@ -17,7 +17,7 @@ import (
 // exact weight typed, the wing area changed and changed back. After each step the page says what the command says.
 func TestSession(t *testing.T) {
 	b := newTab(t, 1280, 800, 1, true)
-	address := singleFile(t)
+	address := singleFile(t) + "?surface=webgl"
 	b.open(address)
 	if got := b.attribute("html", "data-surface"); got != "webgl" {
 		t.Fatalf("surface %q", got)

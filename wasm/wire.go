@@ -12,7 +12,7 @@ import (
 // The event queue as bridge.js writes it: a head of numbers, then a number of events, each a fixed number of numbers.
 // All are float64, little endian. A string is the index of one of the texts handed over beside the queue, or -1.
 const (
-	wireHead   = 8   // top, right, bottom, left inset; 1 for dark; the clock in ms; two unused
+	wireHead   = 8   // top, right, bottom, left inset; 1 for dark; the clock in ms; 1 for a store that changed; one unused
 	wireWidth  = 14  // numbers an event
 	wireEvents = 512 // most events at once
 	wireBytes  = 8 * (wireHead + wireWidth*wireEvents)
@@ -24,6 +24,7 @@ const (
 	wireLink    = 101 // text: the fragment
 	wireNotice  = 102 // text
 	wireFailure = 103 // text
+	wirePaste   = 104 // text, from the clipboard; value: -1 and the text why not
 )
 
 // wire decodes the queue; its buffer is reused.
@@ -57,6 +58,7 @@ func (w *wire) decode(in *app.Input, count int, text func(int) string, file func
 	in.Top, in.Right, in.Bottom, in.Left = w.number(0), w.number(1), w.number(2), w.number(3)
 	in.PrefersDark = w.number(4) == 1
 	in.Now = moment(w.number(5))
+	in.StoreChanged = w.number(6) == 1
 	in.Events, in.Opened, in.Notices, in.Failures = in.Events[:0], in.Opened[:0], in.Notices[:0], in.Failures[:0]
 	count = max(0, min(count, wireEvents))
 	for i := range count {
@@ -70,6 +72,14 @@ func (w *wire) decode(in *app.Input, count int, text func(int) string, file func
 				opened.Data = file(index)
 			} else {
 				opened.Err = text(said)
+			}
+			in.Opened = append(in.Opened, opened)
+		case wirePaste:
+			opened := app.Opened{Pasted: true}
+			if w.number(at+10) < 0 {
+				opened.Err = text(said)
+			} else {
+				opened.Text = text(said)
 			}
 			in.Opened = append(in.Opened, opened)
 		case wireLink:

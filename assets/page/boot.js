@@ -19,36 +19,42 @@
   const otherwise = 'The command levelspan limits CASE.json and the desktop window give the same figures without a browser.';
 
   // What this browser has.
-  const wanted = new URLSearchParams(location.search).get('surface') || 'webgl';
+  const asked = new URLSearchParams(location.search).get('surface');
   if (typeof WebAssembly !== 'object') {
     problem('This browser runs no WebAssembly', 'levelspan is a WebAssembly program. Browsers leave it out in lockdown or enhanced-security modes; ' +
       'switch that off for this page, or use another browser.', otherwise);
     return;
   }
-  if (wanted === 'software') {
-    problem('This version has no software surface', 'The address asks for surface=software. Leave that out to draw with WebGL.', otherwise);
-    return;
-  }
-  const probe = options => {
+  // WebGL2 counts only where it is hardware: drawn by the processor it is far slower than the software surface.
+  const probe = () => {
     try {
-      const g = document.createElement('canvas').getContext('webgl2', options);
+      const g = document.createElement('canvas').getContext('webgl2', {failIfMajorPerformanceCaveat: true});
       if (!g) return false;
+      const names = g.getExtension('WEBGL_debug_renderer_info');
+      const name = String(g.getParameter(names ? names.UNMASKED_RENDERER_WEBGL : g.RENDERER));
       const x = g.getExtension('WEBGL_lose_context');
       if (x) x.loseContext();
-      return true;
+      return !/swiftshader|llvmpipe|softpipe|software|basic render/i.test(name);
     } catch (e) { return false; }
   };
-  if (!probe({})) {
-    problem('This browser gives no WebGL2', 'levelspan draws with WebGL2. It is missing where graphics acceleration is switched off, ' +
-      'blocked by policy, or where there is no working graphics driver.', otherwise);
-    return;
-  }
+  const surface = asked === 'software' || asked === 'webgl' ? asked : probe() ? 'webgl' : 'software';
 
-  // Device pixels a logical pixel, as the drawing library reads them, once: no more than the glyphs are made for, and no
-  // larger a picture than a tablet's memory bears.
-  const real = window.devicePixelRatio || 1, longest = Math.max(screen.width, screen.height, innerWidth, innerHeight);
-  const ratio = Math.min(real, 3, Math.max(longest * 2 > 4096 ? 1 : 2, 2600 / longest));
-  if (ratio !== real) Object.defineProperty(window, 'devicePixelRatio', {configurable: true, get: () => ratio});
+  // Device pixels a logical pixel: no more than the glyphs are made for, and no larger a picture than a tablet's memory
+  // bears. The drawing library reads it once; when it changes, the software surface goes on.
+  const own = Object.getOwnPropertyDescriptor(window, 'devicePixelRatio');
+  const real = () => (own && own.get ? own.get.call(window) : 0) || 1;
+  const ratio = () => {
+    const longest = Math.max(screen.width, screen.height, innerWidth, innerHeight);
+    return Math.min(real(), 3, Math.max(longest * 2 > 4096 ? 1 : 2, 2600 / longest));
+  };
+  if (own && own.get) Object.defineProperty(window, 'devicePixelRatio', {configurable: true, get: ratio});
+  const watch = () => {
+    if (!window.matchMedia) return;
+    const now = matchMedia('(resolution: ' + real() + 'dppx)');
+    const changed = () => { L.resized(); watch(); };
+    if (now.addEventListener) now.addEventListener('change', changed, {once: true});
+  };
+  watch();
 
   // The drawing library asks for a context with the browser's defaults. The drawing smooths its own edges and covers all
   // of its canvas: many samples a pixel and a blend with the page below would cost much and show nothing.
@@ -108,14 +114,14 @@
   };
   const go = new Go();
   go.argv = ['levelspan', root.dataset.version];
-  go.env = {GOGC: '300'};
+  go.env = {GOGC: '300', SURFACE: surface};
   go.exit = code => L.fail('The program ended with code ' + code + '.');
   try {
     const instance = await (inline ? fromPage : fromSite)(go.importObject);
     bar(0.85);
     says('Starting the program');
     await breathe();
-    L.unavailable = why => problem('The drawing could not start', why, otherwise);
+    L.park();
     go.run(instance).then(() => L.fail('The program ended.'), e => L.fail(String(e)));
   } catch (e) {
     problem('The program did not load', String(e.message || e), 'Reload the page. If that does not help, download it again.', otherwise);

@@ -10,9 +10,59 @@
   const queue = new Float64Array(HEAD + WIDTH * MOST);
   L.bytes = new Uint8Array(queue.buffer);
   let count = 0, strings = [], files = [];
-  let wake = null;
-  L.onwake = f => { wake = f; };
-  L.wake = () => { if (wake && !L.dead) wake(); };
+  // Frames. The software surface paints on request. The drawing library asks for a frame after every frame; its
+  // requests are parked while nothing happens, or for ever once it has been left.
+  const raf = window.requestAnimationFrame.bind(window), QUIET = 300;
+  let asked = false, parked = null, woken = 0, left = false, pen = null, scratch = null;
+  L.wake = () => {
+    if (L.dead) return;
+    if (pen) {
+      if (asked) return;
+      asked = true;
+      raf(() => {
+        asked = false;
+        if (!L.dead) L.onpaint(document.body.clientWidth, document.body.clientHeight, devicePixelRatio);
+      });
+      return;
+    }
+    woken = performance.now();
+    if (L.onwake) L.onwake();
+    if (parked && !left) { const f = parked; parked = null; raf(f); }
+  };
+  L.park = () => {
+    window.requestAnimationFrame = f => {
+      if (left || performance.now() - woken > QUIET) { parked = f; return 0; }
+      return raf(f);
+    };
+    woken = performance.now() + 1e4;                    // its first frames come whatever happens
+  };
+  // lose leaves the drawing library: its canvas and its frames go.
+  L.lose = () => {
+    if (left) return;
+    left = true;
+    parked = null;
+    for (const c of document.querySelectorAll('body>canvas')) if (!pen || c !== pen.canvas) c.remove();
+    if (L.onlost) L.onlost();
+  };
+  L.software = () => {
+    L.lose();
+    const c = document.createElement('canvas');
+    c.setAttribute('aria-hidden', 'true');
+    c.width = c.height = 1;
+    document.body.append(c);
+    pen = c.getContext('2d', {alpha: false});
+    if (pen) L.wake(); else L.fail('The browser gives no canvas to draw on.');
+  };
+  L.picture = (w, h) => {
+    pen.canvas.width = w;
+    pen.canvas.height = h;
+    pen.canvas.style.width = w / devicePixelRatio + 'px';
+    pen.canvas.style.height = h / devicePixelRatio + 'px';
+    scratch = new Uint8ClampedArray(4 * w * h);
+    return scratch;
+  };
+  L.blit = (x, y, w, h) => pen.putImageData(new ImageData(scratch.subarray(0, 4 * w * h), w, h), x, y);
+  L.resized = () => { if (pen) L.wake(); else if (L.onlost) L.lose(); };
   const text = s => s === undefined ? -1 : strings.push(String(s)) - 1;
 
   // push notes one event and asks for a frame. A queue that is full drops moves and keeps what ends a gesture.
@@ -35,7 +85,7 @@
     return -1;
   };
   Object.assign(L, {DOWN: 0, MOVE: 1, UP: 2, CANCEL: 3, WHEEL: 4, KEY: 5, FOCUS: 6, ACTIVATE: 7, VALUE: 8, TEXT: 9,
-    FILE: 100, LINK: 101, NOTICE: 102, FAILURE: 103});
+    FILE: 100, LINK: 101, NOTICE: 102, FAILURE: 103, PASTE: 104});
 
   // drain fills the head (insets, palette) and gives the number of events; the program copies L.bytes next.
   const dark = window.matchMedia ? matchMedia('(prefers-color-scheme: dark)') : {matches: false};
@@ -46,6 +96,8 @@
     queue[0] = inset[0]; queue[1] = inset[1]; queue[2] = inset[2]; queue[3] = inset[3];
     queue[4] = dark.matches ? 1 : 0;
     queue[5] = performance.now();
+    queue[6] = stored ? 1 : 0;
+    stored = false;
     return n;
   };
   // texts hands over the strings of the events just drained; files stay until read.
@@ -62,7 +114,45 @@
     } catch (e) { insets = [0, 0, 0, 0]; }
     return insets;
   };
-  addEventListener('resize', () => { insets = null; }, true);
+  addEventListener('resize', e => {
+    insets = null;
+    if (!left) { L.wake(); return; }
+    e.stopImmediatePropagation();                       // the drawing library would draw once more
+    L.wake();
+  }, true);
+
+  // What outlives the page. The answer is a word and values: ok, none, full, or why not.
+  let stored = false, lastCase = '';
+  addEventListener('storage', () => { stored = true; L.wake(); });
+  L.store = (area, what, key, value) => {
+    if (what === 'set' && /^levelspan\/case\//.test(key)) lastCase = value.slice(Math.max(0, value.indexOf('{')));
+    try {
+      const s = window[area];
+      switch (what) {
+        case 'get': { const v = s.getItem(key); return v === null ? ['none'] : ['ok', v]; }
+        case 'set': s.setItem(key, value); return ['ok'];
+        case 'remove': s.removeItem(key); return ['ok'];
+        default: return ['ok', ...Object.keys(s)];
+      }
+    } catch (e) { return [/quota/i.test(e && e.name) ? 'full' : String(e && e.message || 'refused')]; }
+  };
+  L.paste = () => {
+    const no = e => L.push(L.PASTE, {value: -1, text: 'The browser did not let the program read the clipboard: ' + (e && e.message)});
+    try { navigator.clipboard.readText().then(t => L.push(L.PASTE, {text: t}), no); } catch (e) { no(e); }
+  };
+  L.canshare = () => typeof navigator.share === 'function';
+  L.share = (title, said, link, name, mime, content) => {
+    const no = e => { if (e.name !== 'AbortError') L.push(L.FAILURE, {text: 'Not shared: ' + e.message}); };
+    try {
+      const data = {title, text: said};
+      if (link) data.url = link;
+      if (name && navigator.canShare) {
+        const files = [new File([content], name, {type: mime})];
+        if (navigator.canShare({files})) data.files = files;
+      }
+      navigator.share(data).catch(no);
+    } catch (e) { no(e); }
+  };
 
   // Clipboard, with the text always left in the mirror, and shown where the browser refuses.
   L.copy = (what, value) => {
@@ -160,6 +250,11 @@
     const box = byId('levelspan-stop');
     box.querySelector('pre').textContent = why + (L.log ? '\n\n' + L.log : '');
     box.querySelector('button').onclick = () => location.reload();
+    const saved = box.querySelector('textarea');
+    saved.value = lastCase;
+    saved.parentNode.hidden = !lastCase;
+    for (const id of ['levelspan-summary', 'levelspan-warnings', 'levelspan-status', 'levelspan-facts']) byId(id).replaceChildren();
+    byId('levelspan-limits').tBodies[0].replaceChildren();
     for (const c of document.querySelectorAll('canvas')) c.style.visibility = 'hidden';
     for (const id of ['levelspan-page', 'levelspan-shell', 'levelspan-copy']) byId(id).hidden = true;
     document.documentElement.removeAttribute('data-ready');
@@ -177,13 +272,13 @@
     if (!e.target.isConnected) return;
     e.stopImmediatePropagation();
     e.preventDefault();
-    if (L.onlost) L.onlost();
-    else L.fail('The browser took the graphics context away. This happens when a tablet sleeps or runs short of memory.');
+    L.lose();
   }, true);
 
   // adopt tidies up after the drawing library's start: its canvas is out of the way of focus and of screen readers,
   // the page's own viewport counts, and a change of size that sends no event still arrives.
   L.adopt = () => {
+    window.requestAnimationFrame = raf;
     for (const c of document.querySelectorAll('body>canvas')) {
       c.removeAttribute('tabindex');
       c.setAttribute('aria-hidden', 'true');

@@ -13,6 +13,7 @@ import (
 	"levelspan/game/app"
 	"levelspan/game/desktop"
 	_ "levelspan/game/display/need" // ends the program before the window can panic
+	"levelspan/game/keep"
 	"levelspan/game/scene"
 )
 
@@ -39,13 +40,23 @@ func doMain(args []string, out, errs io.Writer) int {
 		}
 		h.Arrived(app.Opened{Name: path, Data: data})
 	}
-	w := &window{host: h, app: app.New(h, nil), start: time.Now()}
+	w := &window{host: h, app: app.NewWith(app.Options{Host: h, Store: store(errs)}), start: time.Now()}
 	surface := game.NewSurface(w.frame, func(why string) { fmt.Fprintln(errs, "levelspan-window: stopped:", why) })
 	if err := surface.Run("levelspan"); err != nil {
 		fmt.Fprintf(errs, "levelspan-window: the window did not open: %v; the command without a window is: levelspan limits CASE.json\n", err)
 		return 1
 	}
 	return 0
+}
+
+// store is where cases are kept, nil (in memory) where the person has no folder for it.
+func store(errs io.Writer) keep.Store {
+	folder, err := keep.Folder()
+	if err != nil {
+		fmt.Fprintln(errs, "levelspan-window: cases are not kept:", err)
+		return nil
+	}
+	return keep.NewFiles(folder)
 }
 
 // parse reads the command line; done means that there is nothing left to do but end with code.
