@@ -113,7 +113,7 @@ func start(t *testing.T, display string, args ...string) *desk {
 	t.Helper()
 	d := &desk{t: t, env: environment("DISPLAY="+display, "LIBGL_ALWAYS_SOFTWARE=1"), dir: t.TempDir(), errs: new(bytes.Buffer)}
 	d.cmd = exec.Command(binary(t), args...)
-	d.cmd.Env, d.cmd.Dir, d.cmd.Stderr = d.env, d.dir, d.errs
+	d.cmd.Env, d.cmd.Dir, d.cmd.Stderr = append(d.env[:len(d.env):len(d.env)], "XDG_CONFIG_HOME="+d.dir), d.dir, d.errs
 	if err := d.cmd.Start(); err != nil {
 		t.Fatal(err)
 	}
