@@ -100,7 +100,8 @@ func TestStorageRefused(t *testing.T) {
 	}
 }
 
-// paints drags a handle by a move a frame for two seconds and gives the pictures painted a second.
+// paints drags a handle by a move a frame for two seconds and gives how often a second its value in the mirror changed,
+// which stands for the pictures: one is made for each.
 func (b *tab) paints() float64 {
 	return eval[float64](b, `new Promise(done => {
 		const box = document.querySelector('[data-handle=mass]').getBoundingClientRect(), layer = document.getElementById('levelspan-layer');
@@ -121,7 +122,7 @@ func (b *tab) paints() float64 {
 }
 
 // TestSoftwareIsFast drags on both surfaces, without a graphics processor. The browser shows 60 pictures a second at
-// most, so that the software surface can be three times as fast as WebGL only where that gives fewer than 20: on two idle
+// most, so that the software surface can be three times as fast as WebGL only where that gives fewer than 20: on two shared
 // cores it gave 30 to the software surface's 52, and only the order of the two is held here.
 func TestSoftwareIsFast(t *testing.T) {
 	rate := map[string]float64{}
