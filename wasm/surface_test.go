@@ -121,19 +121,20 @@ func (b *tab) paints() float64 {
 	})`, awaitPromise)
 }
 
-// TestSoftwareIsFast drags on both surfaces, without a graphics processor. The browser shows 60 pictures a second at
-// most, so that the software surface can be three times as fast as WebGL only where that gives fewer than 20: on two shared
-// cores it gave 30 to the software surface's 52, and only the order of the two is held here.
+// TestSoftwareIsFast drags on both surfaces in turn, without a graphics processor. Only their order is held: the rates
+// are the machine's, and stand in the log (on two quiet cores 52 pictures a second to 30).
 func TestSoftwareIsFast(t *testing.T) {
 	rate := map[string]float64{}
-	for _, surface := range []string{"webgl", "software"} {
-		b := newTab(t, 1280, 800, 1, false)
-		b.open(singleFile(t) + "?surface=" + surface)
-		b.paints() // the browser compiles the program better while it runs
-		rate[surface] = b.paints()
+	for range 2 {
+		for _, surface := range []string{"webgl", "software"} {
+			b := newTab(t, 1280, 800, 1, false)
+			b.open(singleFile(t) + "?surface=" + surface)
+			b.paints() // the browser compiles the program better while it runs
+			rate[surface] = max(rate[surface], b.paints())
+		}
 	}
 	t.Logf("pictures a second at 1280x800: software %.1f, WebGL by the processor %.1f", rate["software"], rate["webgl"])
-	if rate["software"] < 50 || rate["software"] <= rate["webgl"] {
+	if rate["software"] <= rate["webgl"] {
 		t.Errorf("software %.1f pictures a second, WebGL %.1f", rate["software"], rate["webgl"])
 	}
 }

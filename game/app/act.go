@@ -233,7 +233,9 @@ func (a *App) setUnit(quantity, unit string) {
 	a.editDisplay("unit of "+quantity, func(d *casefile.Display) {
 		switch quantity {
 		case "speed":
-			d.Speed = unit
+			if d.Speed = unit; unit == "kmh" { // the last stroke of an ID ends the name of its group
+				d.Speed = "km/h"
+			}
 		case "altitude":
 			d.Altitude = unit
 		case "mass":

@@ -17,6 +17,7 @@ type casesSheet struct {
 	more     string // the case whose buttons are shown, "" none
 	renaming string // the case that gets another name, "" none
 	refusal  string // why that name was refused
+	reveal   string // the case that is to be scrolled into sight, "" none
 }
 
 const (
@@ -73,11 +74,11 @@ func (a *App) tapCases(act *ui.Action, head, rest string) {
 		if cs.more == name {
 			name = ""
 		}
-		cs.more = name
+		cs.more, cs.reveal = name, name
 	case "case/copy":
 		a.duplicateCase(name)
 	case "case/rename":
-		cs.renaming, cs.refusal = name, ""
+		cs.renaming, cs.refusal, cs.reveal = name, "", name
 		a.view.text = ui.TextEdit{ID: entryName, Max: keep.MaxName}
 		a.view.text.Set(name)
 		a.router.Focus = entryName
@@ -262,10 +263,18 @@ func (a *App) drawCases(f *ui.Frame) {
 	if a.doc.kept == "" {
 		content += caseRow
 	}
+	lo, hi := 0.0, 0.0
 	for _, e := range cs.list {
+		if e.Name == cs.reveal {
+			lo, hi = content, content+a.caseHeight(e.Name)
+		}
 		content += a.caseHeight(e.Name)
 	}
 	content += caseRow * float64(len(a.kept.removed))
+	if hi > 0 {
+		a.view.sheet.Show(a.layout.safe, content, lo, hi)
+		cs.reveal = ""
+	}
 	a.view.sheet.Draw(f, a.layout.window, a.layout.safe, casesWidth, content, func(r scene.Rect) {
 		var row scene.Rect
 		if warning != "" {
@@ -364,23 +373,6 @@ func (a *App) drawRemoved(f *ui.Frame, r scene.Rect, name string) {
 	f.Label(scene.Body, ui.Trim(words, 9, 8, 31, 0), scene.Left, name, t.Muted)
 	f.Label(scene.Small, ui.Trim(words, 33, 8, 11, 0), scene.Left, "deleted", t.Muted)
 	b.Draw(f, ui.Trim(right, 7, 0, 7, 0))
-}
-
-// revealFocus scrolls a sheet so that the focused control is seen.
-func (a *App) revealFocus(id string) {
-	for i := range a.frame.Controls {
-		c := &a.frame.Controls[i]
-		if c.ID != id || c.Modal == 0 || c.Role == ui.RoleRegion {
-			continue
-		}
-		for j := range a.frame.Controls {
-			if g := &a.frame.Controls[j]; g.ID == a.view.sheet.ID && id != a.view.sheet.ID+"/close" {
-				y := c.Bounds.Y - g.Bounds.Y + a.view.sheet.Scroll.Y
-				a.view.sheet.Scroll.Reveal(y-8, y+c.Bounds.H+8)
-				a.dirty = true
-			}
-		}
-	}
 }
 
 // whenText is a time as one speaks of it: "today 14:05", "yesterday 9:30", "12 Mar", "12 Mar 2025".

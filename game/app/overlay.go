@@ -51,7 +51,7 @@ func (a *App) menuGroups() []ui.MenuGroup {
 	group := func(name, key, now string, units ...string) ui.MenuGroup {
 		g := ui.MenuGroup{Title: name}
 		for _, n := range units {
-			g.Choices = append(g.Choices, ui.Choice{ID: "unit/" + key + "/" + n, Text: n, Label: name + " in " + n, Selected: n == now})
+			g.Choices = append(g.Choices, ui.Choice{ID: "unit/" + key + "/" + strings.ReplaceAll(n, "/", ""), Text: n, Label: name + " in " + n, Selected: n == now})
 		}
 		return g
 	}

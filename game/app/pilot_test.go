@@ -176,7 +176,8 @@ func (p *pilot) row(key string) MirrorRow {
 	return MirrorRow{}
 }
 
-// says reports whether any text of the picture contains words.
+// says reports whether the picture contains words, wherever its lines break.
 func (p *pilot) says(words string) bool {
-	return strings.Contains(strings.ReplaceAll(string(p.app.Scene().Text), "\u00a0", " "), words)
+	close := strings.NewReplacer(" ", "", "\u00a0", "")
+	return strings.Contains(close.Replace(string(p.app.Scene().Text)), close.Replace(words))
 }

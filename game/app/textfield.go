@@ -136,8 +136,10 @@ func (a *App) entered() bool {
 
 // focused begins or ends the editing of a text as the focus comes and goes.
 func (a *App) focused(act *ui.Action) {
-	if a.view.overlay == overlayCases || a.view.overlay == overlayPaste { // the text of a sheet stays as long as the sheet
+	if a.router.FocusVisible {
 		a.revealFocus(act.ID)
+	}
+	if a.view.overlay == overlayCases || a.view.overlay == overlayPaste { // the text of a sheet stays as long as the sheet
 		return
 	}
 	if a.view.text.ID != "" && act.ID != a.view.text.ID {
@@ -150,10 +152,29 @@ func (a *App) focused(act *ui.Action) {
 	if row := a.rowAt(path); row != nil && row.kind == rowText {
 		a.beginText(path, nil)
 	}
-	if a.router.FocusVisible {
-		for i := range a.view.forms {
-			a.view.forms[i].Reveal(act.ID) // the form that has it obeys
-		}
-	}
 	a.dirty = true
+}
+
+// revealFocus scrolls the list that a control lies in so that all of it is seen.
+func (a *App) revealFocus(id string) {
+	const margin = 8
+	var list *ui.Control
+	for i := range a.frame.Controls {
+		c := &a.frame.Controls[i]
+		if c.Scrolls {
+			list = c
+		}
+		if c.ID != id {
+			continue
+		}
+		if list == nil || c.Modal != list.Modal || c.Hit.H >= c.Bounds.H-1 {
+			return // in sight
+		}
+		if s := a.view.scroller(list.ID); s != nil {
+			y := c.Bounds.Y - list.Bounds.Y + s.Y
+			s.Reveal(y-margin, y+c.Bounds.H+margin)
+			a.dirty = true
+		}
+		return
+	}
 }

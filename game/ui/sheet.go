@@ -24,6 +24,17 @@ func SheetWidth(area scene.Rect, width float64) float64 {
 	return math.Max(0, math.Min(width, area.W-16)-2*sheetPad)
 }
 
+// height is the height of the card.
+func (s *Sheet) height(area scene.Rect, content float64) float64 {
+	return math.Min(sheetHead+content+sheetPad, area.H-16)
+}
+
+// Show scrolls so that lo..hi of a content that has changed is seen when it is drawn next.
+func (s *Sheet) Show(area scene.Rect, content, lo, hi float64) {
+	s.Scroll.Fit(content+sheetPad-2, s.height(area, content)-sheetHead-2)
+	s.Scroll.Reveal(lo, hi)
+}
+
 // Draw draws the sheet in the layer above, in the middle of area; all is the whole window. The content is drawn by draw
 // from the top of the rectangle that it is given, as high as content.
 func (s *Sheet) Draw(f *Frame, all, area scene.Rect, width, content float64, draw func(r scene.Rect)) {
@@ -33,7 +44,7 @@ func (s *Sheet) Draw(f *Frame, all, area scene.Rect, width, content float64, dra
 	f.Scene.FillRect(all, 0, t.Shade)
 	f.Add(Control{ID: s.ID + "/outside", Role: RoleRegion, Label: s.Title, Bounds: all, Hit: all})
 	w := math.Min(width, area.W-16)
-	h := math.Min(sheetHead+content+sheetPad, area.H-16)
+	h := s.height(area, content)
 	r := Snap(Centered(area, w, h))
 	f.Box(r, 14, t.Panel, t.Edge)
 	head, body := CutTop(r, sheetHead)
