@@ -58,6 +58,7 @@ func TestLostContext(t *testing.T) {
 	if !eval[bool](b, "globalThis.sameDocument === true && document.getElementById('levelspan-stop').hidden") {
 		t.Error("the page was loaded anew, or has stopped")
 	}
+	b.agree("the lost context")
 }
 
 // TestReloadKeepsTheCase changes a figure and loads the page again.
@@ -72,6 +73,7 @@ func TestReloadKeepsTheCase(t *testing.T) {
 	if got := b.handle("mass"); got != changed {
 		t.Errorf("after loading again the mass is %g, was %g", got, changed)
 	}
+	b.agree("loading again")
 	x, y = b.control("handle/mass").middle()
 	b.dragMouse(x, y, x+20, y, 5)
 	b.settle()
@@ -98,6 +100,7 @@ func TestStorageRefused(t *testing.T) {
 	if b.handle("mass") == before || b.attribute("html", "data-ready") != "true" {
 		t.Error("without storage the page does not follow the handle")
 	}
+	b.agree("a drag without storage")
 }
 
 // paints drags a handle by a move a frame for two seconds and gives how often a second its value in the mirror changed,
