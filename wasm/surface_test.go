@@ -103,41 +103,68 @@ func TestStorageRefused(t *testing.T) {
 	b.agree("a drag without storage")
 }
 
-// paints drags a handle by a move a frame for two seconds and gives how often a second its value in the mirror changed,
-// which stands for the pictures: one is made for each.
-func (b *tab) paints() float64 {
-	return eval[float64](b, `new Promise(done => {
+// drag is what a drag of two seconds came to: pictures a second, and the script's time for each, ms.
+type drag struct{ Rate, Cost float64 }
+
+// paints drags a handle by a move a frame, each far enough to change the figures, and counts the pictures: the program
+// hands over a patch for the mirror with each scene that it shows, and the next frame is asked for when the browser has
+// taken the last.
+func (b *tab) paints() drag {
+	return eval[drag](b, `new Promise(done => {
 		const box = document.querySelector('[data-handle=mass]').getBoundingClientRect(), layer = document.getElementById('levelspan-layer');
 		const x = box.x + box.width / 2, y = box.y + box.height / 2;
 		const send = (kind, dx) => layer.dispatchEvent(new PointerEvent(kind, {bubbles: true, pointerId: 7, pointerType: 'touch', clientX: x + dx, clientY: y, button: 0, buttons: 1}));
-		let n = 0, seen = document.querySelector('[data-handle=mass]').getAttribute('aria-valuenow');
+		const patch = levelspan.patch, paint = levelspan.onpaint;
+		let n = 0, i = 0, spent = 0;
+		levelspan.patch = (...a) => { n++; return patch(...a); };
+		if (paint) levelspan.onpaint = (...a) => { const t = performance.now(); paint(...a); spent += performance.now() - t; };
 		send('pointerdown', 0);
+		send('pointermove', -10);
 		const from = performance.now();
+		n = 0;
 		const step = () => {
-			const now = performance.now() - from, is = document.querySelector('[data-handle=mass]').getAttribute('aria-valuenow');
-			if (is !== seen) { seen = is; n++; }
-			if (now > 2000) { send('pointerup', 0); done(1000 * n / now); return; }
-			send('pointermove', -60 + 50 * Math.sin(now / 200));
+			const now = performance.now() - from;
+			if (now > 2000) {
+				send('pointerup', 0);
+				levelspan.patch = patch;
+				levelspan.onpaint = paint;
+				done({Rate: 1000 * n / now, Cost: spent / n});
+				return;
+			}
+			i++;
+			send('pointermove', -120 + Math.abs(3 * i % 200 - 100));
 			requestAnimationFrame(step);
 		};
 		requestAnimationFrame(step);
 	})`, awaitPromise)
 }
 
-// TestSoftwareIsFast drags on both surfaces in turn, without a graphics processor. Only their order is held: the rates
-// are the machine's, and stand in the log (on two quiet cores 52 pictures a second to 30).
+// TestSoftwareIsFast drags on both surfaces in turn at 1280x800, without a graphics processor: the software surface
+// shows at least 50 pictures a second, and three times as many as WebGL drawn by the processor in the same run.
 func TestSoftwareIsFast(t *testing.T) {
-	rate := map[string]float64{}
-	for range 2 {
+	best := map[string]drag{}
+	measure := func() {
 		for _, surface := range []string{"webgl", "software"} {
 			b := newTab(t, 1280, 800, 1, false)
 			b.open(singleFile(t) + "?surface=" + surface)
 			b.paints() // the browser compiles the program better while it runs
-			rate[surface] = max(rate[surface], b.paints())
+			for range 2 {
+				if d := b.paints(); d.Rate > best[surface].Rate {
+					best[surface] = d
+				}
+			}
 		}
 	}
-	t.Logf("pictures a second at 1280x800: software %.1f, WebGL by the processor %.1f", rate["software"], rate["webgl"])
-	if rate["software"] <= rate["webgl"] {
-		t.Errorf("software %.1f pictures a second, WebGL %.1f", rate["software"], rate["webgl"])
+	enough := func() bool {
+		return best["software"].Rate >= 50 && best["software"].Rate >= 3*best["webgl"].Rate
+	}
+	for range 3 { // another program may have had the processor
+		if measure(); enough() {
+			break
+		}
+	}
+	t.Logf("pictures a second: software %.1f (%.1f ms of script each), WebGL by the processor %.1f", best["software"].Rate, best["software"].Cost, best["webgl"].Rate)
+	if !enough() {
+		t.Error("the software surface is not fast enough")
 	}
 }

@@ -49,6 +49,11 @@ func (p *Painter) UseAtlas(a *glyph.Atlas) { p.atlas = a }
 // Paint paints the part of the scene within dirty, and leaves the other pixels of dst alone. dst's origin is the
 // scene's.
 func (p *Painter) Paint(s *scene.Scene, dst *image.RGBA, dirty image.Rectangle) {
+	p.paint(s, dst, dirty, nil)
+}
+
+// paint paints within dirty; boxes, if not nil, are the pixels that each operation may touch.
+func (p *Painter) paint(s *scene.Scene, dst *image.RGBA, dirty image.Rectangle, boxes []image.Rectangle) {
 	f := &p.frame
 	f.Begin(s)
 	if p.atlas == nil || p.atlas.Scale != f.Scale {
@@ -64,7 +69,11 @@ func (p *Painter) Paint(s *scene.Scene, dst *image.RGBA, dirty image.Rectangle) 
 		b.set(row(dst, y, f.Clip.Min.X, f.Clip.Max.X))
 	}
 	for i := range s.Ops {
-		p.op(s, &s.Ops[i])
+		op := &s.Ops[i]
+		if boxes != nil && op.Kind != scene.OpPushClip && op.Kind != scene.OpPopClip && !boxes[i].Overlaps(f.Clip) {
+			continue
+		}
+		p.op(s, op)
 	}
 	p.dst = nil
 }

@@ -17,7 +17,7 @@ type shadow struct {
 }
 
 // maxParts bounds the rectangles that Update returns.
-const maxParts = 8
+const maxParts = 24
 
 // Update brings dst from the scene of the last Update to s by painting only what differs, and returns the rectangles
 // that it painted (valid until the next call): none when nothing changed, the whole picture when the size, the scale
@@ -36,7 +36,7 @@ func (p *Painter) Update(s *scene.Scene, dst *image.RGBA) []image.Rectangle {
 		p.compare(old, now)
 	}
 	for _, r := range p.dirty {
-		p.Paint(s, dst, r)
+		p.paint(s, dst, r, now.boxes)
 	}
 	return p.dirty
 }
