@@ -13,6 +13,7 @@ import (
 type options struct {
 	dir     string
 	wasm    string // a program already compiled, or ""
+	program string // or the package to compile
 	version string // or "" to describe it
 	brotli  bool
 	slim    bool // see slim.go
@@ -31,7 +32,7 @@ func build(ctx context.Context, o options, out io.Writer) error {
 	if o.wasm != "" {
 		p.Wasm, err = os.ReadFile(o.wasm)
 	} else {
-		p.Wasm, err = compile(ctx, o.slim)
+		p.Wasm, err = compileProgram(ctx, o.program, o.slim)
 	}
 	if err != nil {
 		return err

@@ -11,12 +11,8 @@ import (
 	"strings"
 )
 
-// compile builds ./wasm for the browser and gives its bytes. Slim leaves out what the drawing library makes the linker
-// keep for nothing (see slim.go).
-func compile(ctx context.Context, slim bool) ([]byte, error) {
-	return compileProgram(ctx, "levelspan/wasm", slim)
-}
-
+// compileProgram builds a package for the browser and gives its bytes. Slim leaves out what the drawing library makes the
+// linker keep for nothing (see slim.go).
 func compileProgram(ctx context.Context, program string, slim bool) ([]byte, error) {
 	dir, err := os.MkdirTemp("", "pagebuild")
 	if err != nil {

@@ -19,7 +19,8 @@ func doMain(args []string, out, errs io.Writer) int {
 	flags := flag.NewFlagSet("pagebuild", flag.ContinueOnError)
 	flags.SetOutput(errs)
 	dir := flags.String("out", "dist", "directory to write into")
-	wasm := flags.String("wasm", "", "a program already compiled, instead of ./wasm")
+	wasm := flags.String("wasm", "", "a program already compiled, instead of compiling one")
+	program := flags.String("program", "levelspan/wasm", "the package to compile for the page")
 	version := flags.String("version", "", "version shown (default: git describe, else \"dev\")")
 	withBrotli := flags.Bool("brotli", true, "also compress for hosting with the brotli command, if it is there; slow")
 	slim := flags.Bool("slim", true, "link the program with the drawing library's shaders made beforehand: a quarter smaller")
@@ -39,7 +40,7 @@ func doMain(args []string, out, errs io.Writer) int {
 	if *serve != "" {
 		err = serveSite(ctx, *dir+"/site", *serve, *seconds, *open, out)
 	} else {
-		err = build(ctx, options{dir: *dir, wasm: *wasm, version: *version, brotli: *withBrotli, slim: *slim}, out)
+		err = build(ctx, options{dir: *dir, wasm: *wasm, program: *program, version: *version, brotli: *withBrotli, slim: *slim}, out)
 	}
 	if err != nil {
 		fmt.Fprintln(errs, "pagebuild:", err)

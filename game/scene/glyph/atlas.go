@@ -1,6 +1,6 @@
 // Package glyph makes the glyph atlas: every character of the embedded font in every text style, drawn once for one
 // scale into one image that never changes afterwards. A back end uploads it once; no character is ever drawn from a
-// place that held another one before.
+// place that held another one before. A back end that reads the pixels itself may take an atlas that is filled on demand.
 package glyph
 
 import (
@@ -26,6 +26,7 @@ type Atlas struct {
 	WhiteX float32      // centre of a texel (with full neighbours) of full coverage, for shapes without texture
 	WhiteY float32
 	glyphs [scene.StyleCount][]Glyph
+	late   *late // of an atlas made by OnDemand
 }
 
 const (
@@ -42,6 +43,9 @@ func (a *Atlas) At(style scene.Style, index int) Glyph {
 	g := a.glyphs[style]
 	if uint(index) >= uint(len(g)) {
 		index = font.Missing
+	}
+	if a.late != nil {
+		a.need(style, index)
 	}
 	return g[index]
 }
@@ -95,11 +99,7 @@ func New(scale float64) *Atlas {
 		shelf = max(shelf, int(g.H)+gap)
 	}
 	a.Image = image.NewAlpha(image.Rect(0, 0, width, y+shelf))
-	for y := range white {
-		for x := range white {
-			a.Image.Pix[y*a.Image.Stride+x] = 255
-		}
-	}
+	a.fillWhite()
 	var z cover.Rasterizer
 	for s := range scene.StyleCount {
 		f := newFit(s, a.Scale)
@@ -112,6 +112,14 @@ func New(scale float64) *Atlas {
 		}
 	}
 	return a
+}
+
+func (a *Atlas) fillWhite() {
+	for y := range white {
+		for x := range white {
+			a.Image.Pix[y*a.Image.Stride+x] = 255
+		}
+	}
 }
 
 // RGBA is the atlas as premultiplied white, for a texture of four channels.

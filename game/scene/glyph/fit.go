@@ -70,7 +70,18 @@ func (f *fit) bounds(segs []font.Segment) Glyph {
 	x0, y0, x1, y1 := math.Inf(1), math.Inf(1), math.Inf(-1), math.Inf(-1)
 	put := func(x, y float64) {
 		x, y = f.x(x), f.y(y)
-		x0, y0, x1, y1 = min(x0, x), min(y0, y), max(x1, x), max(y1, y)
+		if x < x0 { // not min and max: see cover
+			x0 = x
+		}
+		if x > x1 {
+			x1 = x
+		}
+		if y < y0 {
+			y0 = y
+		}
+		if y > y1 {
+			y1 = y
+		}
 	}
 	for _, s := range segs {
 		put(s.X, s.Y)

@@ -57,7 +57,7 @@ func (p *Painter) paint(s *scene.Scene, dst *image.RGBA, dirty image.Rectangle, 
 	f := &p.frame
 	f.Begin(s)
 	if p.atlas == nil || p.atlas.Scale != f.Scale {
-		p.atlas = glyph.New(f.Scale)
+		p.atlas = glyph.OnDemand(f.Scale)
 	}
 	if p.emit == nil {
 		p.emit = p.span

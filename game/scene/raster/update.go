@@ -46,7 +46,7 @@ func (p *Painter) outline(s *scene.Scene, to *shadow) {
 	f := &p.frame
 	f.Begin(s)
 	if p.atlas == nil || p.atlas.Scale != f.Scale {
-		p.atlas = glyph.New(f.Scale)
+		p.atlas = glyph.OnDemand(f.Scale)
 	}
 	to.clips, to.boxes = to.clips[:0], to.boxes[:0]
 	for i := range s.Ops {

@@ -104,10 +104,18 @@ func (z *Rasterizer) inside(ax, ay, bx, by, slope float64, dir float32) {
 	z.lo, z.hi = min(z.lo, first), max(z.hi, last)
 	x := ax
 	for row := first; row < last; row++ {
-		y0, y1 := max(ay, float64(row)), min(by, float64(row+1))
+		// Comparisons in place of min and max: as WebAssembly those are calls, for the sake of NaN, and there is none here.
+		y0, y1 := float64(row), float64(row+1)
+		if y0 < ay {
+			y0 = ay
+		}
 		next := bx
-		if y1 < by {
-			next = min(max(ax+(y1-ay)*slope, 0), w)
+		if y1 >= by {
+			y1 = by
+		} else if next = ax + (y1-ay)*slope; next < 0 {
+			next = 0
+		} else if next > w {
+			next = w
 		}
 		z.row(row, x, next, float32(y1-y0)*dir)
 		x = next
@@ -136,7 +144,10 @@ func (z *Rasterizer) row(row int, x, next float64, d float32) {
 	each := float64(d) / (next - x) // height for a pixel's width
 	spill := 0.0                    // what the pixel before hands to this one
 	for ; i < z.w; i++ {
-		right := min(next, float64(i+1))
+		right := float64(i + 1)
+		if right > next {
+			right = next
+		}
 		part := (right - x) * each
 		m := (x+right)/2 - float64(i)
 		acc[i] += float32(spill + part*(1-m))
