@@ -87,10 +87,11 @@ func singleFile(t *testing.T) string {
 
 // browser is the one Chromium of the run. Its WebGL is SwiftShader: these tests mean the webgl surface.
 var browser struct {
-	once sync.Once
-	ctx  context.Context
-	stop func()
-	err  error
+	once    sync.Once
+	ctx     context.Context
+	stop    func()
+	profile string // its directory, which names it among the processes
+	err     error
 }
 
 func chromium() string {
@@ -124,6 +125,7 @@ func newTab(t *testing.T, width, height int, scale float64, touch bool) *tab {
 			browser.err = err
 			return
 		}
+		browser.profile = profile
 		options := append(chromedp.DefaultExecAllocatorOptions[:],
 			chromedp.ExecPath(path), chromedp.NoSandbox, chromedp.UserDataDir(profile),
 			chromedp.Flag("headless", "new"), chromedp.Flag("enable-unsafe-swiftshader", true),

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"math"
 	"os"
 	"time"
 
@@ -39,7 +40,7 @@ type page struct {
 	focus   string
 	again   bool   // the scene holds, but the surface is another
 	surface string // the one that has drawn
-	timer   *time.Timer
+	asleep  bool   // the page has been asked for a frame later
 }
 
 // frame takes the queue in and gives the scene to show, nil if the one shown still holds.
@@ -73,13 +74,14 @@ func (p *page) shown(surface string) {
 
 // sleep sees to it that the next frame comes no later than after d, if d is not negative.
 func (p *page) sleep(d time.Duration) {
-	if p.timer != nil {
-		p.timer.Stop()
+	if d == 0 {
+		p.bridge.wake()
 	}
 	switch {
-	case d == 0:
-		p.bridge.wake()
 	case d > 0:
-		p.timer = time.AfterFunc(d, p.bridge.wake)
+		p.bridge.call("later", math.Ceil(float64(d)/float64(time.Millisecond)))
+	case p.asleep:
+		p.bridge.call("later", -1)
 	}
+	p.asleep = d > 0
 }

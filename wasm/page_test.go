@@ -77,21 +77,6 @@ func TestTurn(t *testing.T) {
 	}
 }
 
-// TestIdle demands that an untouched page asks for nothing: no frame of the program runs.
-func TestIdle(t *testing.T) {
-	b := newTab(t, 800, 600, 1, false)
-	b.open(singleFile(t))
-	x, y := b.control("handle/mass").middle()
-	b.dragMouse(x, y, x-50, y, 5)
-	b.do(chromedp.MouseEvent(input.DispatchMouseEventTypeMouseMoved, 100, 100)) // hovering is not touching
-	b.settle()
-	frames := eval[int](b, `(() => { const drain = levelspan.drain; globalThis.frames = 0; levelspan.drain = () => { frames++; return drain(); };
-		return new Promise(done => setTimeout(() => done(frames), 1500)); })()`, awaitPromise)
-	if frames != 0 {
-		t.Errorf("%d frames in a second and a half of nothing", frames)
-	}
-}
-
 // difference is the mean difference of two pictures and the share of pixels that differ by more than a quarter.
 func difference(a, b image.Image) (mean, far float64) {
 	size := a.Bounds().Size()

@@ -115,6 +115,11 @@
   const go = new Go();
   go.argv = ['levelspan', root.dataset.version];
   go.env = {GOGC: '300', SURFACE: surface};
+  const gojs = go.importObject.gojs, schedule = gojs['runtime.scheduleTimeoutEvent'], set = globalThis.setTimeout;
+  gojs['runtime.scheduleTimeoutEvent'] = sp => {
+    globalThis.setTimeout = (f, ms) => set(f, L.patience(ms));
+    try { schedule(sp); } finally { globalThis.setTimeout = set; }
+  };
   go.exit = code => L.fail('The program ended with code ' + code + '.');
   try {
     const instance = await (inline ? fromPage : fromSite)(go.importObject);

@@ -16,6 +16,7 @@
   let asked = false, parked = null, woken = 0, left = false, pen = null, scratch = null;
   L.wake = () => {
     if (L.dead) return;
+    woken = performance.now();
     if (pen) {
       if (asked) return;
       asked = true;
@@ -25,10 +26,18 @@
       });
       return;
     }
-    woken = performance.now();
     if (L.onwake) L.onwake();
     if (parked && !left) { const f = parked; parked = null; raf(f); }
   };
+  // later asks for a frame after so many milliseconds, instead of the time asked for before; negative: not at all.
+  let alarm = 0;
+  L.later = ms => {
+    clearTimeout(alarm);
+    if (ms >= 0) alarm = setTimeout(L.wake, ms);
+  };
+  // The program's own timers are the drawing library's alone: ten times a second it looks whether the page is hidden, for
+  // the sound that is not there. While nothing happens it may look now and then.
+  L.patience = ms => performance.now() - woken > 1000 ? Math.max(ms, 5000) : ms;
   L.park = () => {
     window.requestAnimationFrame = f => {
       if (left || performance.now() - woken > QUIET) { parked = f; return 0; }
