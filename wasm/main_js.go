@@ -8,6 +8,7 @@ import (
 	"levelspan/game/app"
 	"levelspan/game/keep"
 	"levelspan/game/scene"
+	"levelspan/perf/casefile"
 )
 
 func main() {
@@ -38,17 +39,29 @@ type page struct {
 	mirror  *mirror
 	input   app.Input
 	focus   string
-	again   bool   // the scene holds, but the surface is another
-	surface string // the one that has drawn
-	asleep  bool   // the page has been asked for a frame later
+	held    *casefile.Case // what the page was last given to show if all stops
+	again   bool           // the scene holds, but the surface is another
+	surface string         // the one that has drawn
+	asleep  bool           // the page has been asked for a frame later
 }
 
-// frame takes the queue in and gives the scene to show, nil if the one shown still holds.
+// frame takes the queue in and gives the scene to show, nil if the one shown still holds. It answers for the frame that was
+// asked for, and then asks for the next.
 func (p *page) frame(width, height, scale float64) *scene.Scene {
+	show := p.step(width, height, scale)
+	p.bridge.call("beat")
+	p.sleep(p.app.Wake())
+	return show
+}
+
+func (p *page) step(width, height, scale float64) *scene.Scene {
 	p.bridge.drain(&p.input)
 	p.input.Width, p.input.Height, p.input.Scale = width, height, scale
 	changed := p.app.Step(p.input)
-	p.sleep(p.app.Wake())
+	if c := p.app.Committed(); c != p.held {
+		p.held = c
+		p.bridge.call("hold", string(c.Marshal()))
+	}
 	if !changed && !p.again {
 		return nil
 	}

@@ -109,7 +109,8 @@
   // What the program prints before it dies is kept for the message.
   const write = globalThis.fs.writeSync, words = new TextDecoder();
   globalThis.fs.writeSync = (fd, bytes) => {
-    L.log = (L.log + words.decode(bytes)).slice(-8192);
+    L.log += words.decode(bytes);
+    if (L.log.length > 8192) L.log = L.log.slice(0, 3072) + '\n[...]\n' + L.log.slice(-4096); // the cause stands first
     return write.call(globalThis.fs, fd, bytes);
   };
   const go = new Go();

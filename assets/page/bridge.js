@@ -17,6 +17,7 @@
   L.wake = () => {
     if (L.dead) return;
     woken = performance.now();
+    L.owe();
     if (pen) {
       if (asked) return;
       asked = true;
@@ -131,10 +132,9 @@
   }, true);
 
   // What outlives the page. The answer is a word and values: ok, none, full, or why not.
-  let stored = false, lastCase = '';
+  let stored = false;
   addEventListener('storage', () => { stored = true; L.wake(); });
   L.store = (area, what, key, value) => {
-    if (what === 'set' && /^levelspan\/case\//.test(key)) lastCase = value.slice(Math.max(0, value.indexOf('{')));
     try {
       const s = window[area];
       switch (what) {
@@ -246,6 +246,31 @@
     } catch (e) { failed(e); }
   };
 
+  // The case as last committed, for the day that the program stops: whether or not it could be kept.
+  let lastCase = '';
+  L.hold = text => { lastCase = text; };
+
+  // The heartbeat. Who asks for a frame is owed an answer; without one for three seconds of a page that is shown and gets
+  // its turns, the program has stopped. A page that is hidden, a machine that sleeps and a debugger that halts do not
+  // count: then the turns come late or not at all. Nothing runs while nothing is owed.
+  const TURN = 500, TURNS = 6;
+  let owed = false;
+  L.owe = () => {
+    if (owed || document.documentElement.dataset.ready !== 'true') return;
+    owed = true;
+    let missed = 0, last = performance.now();
+    const turn = () => {
+      if (!owed || L.dead) return;
+      const now = performance.now();
+      if (document.hidden || now - last > 3 * TURN) missed = 0; else missed++;
+      last = now;
+      if (missed >= TURNS) L.fail('The program has not answered for ' + TURN * TURNS / 1000 + ' seconds.');
+      else raf(() => setTimeout(turn, TURN));
+    };
+    setTimeout(turn, TURN);
+  };
+  L.beat = () => { owed = false; };
+
   // Links.
   L.base = () => { try { return location.href.replace(/#.*$/, ''); } catch (e) { return ''; } };
   const followHash = () => { if (/^#case=/.test(location.hash)) L.push(L.LINK, {text: location.hash}); };
@@ -262,6 +287,11 @@
     const saved = box.querySelector('textarea');
     saved.value = lastCase;
     saved.parentNode.hidden = !lastCase;
+    const copy = saved.parentNode.querySelector('button');
+    copy.onclick = () => {
+      const by = ok => { copy.textContent = ok ? 'Copied' : 'Select the text and copy it'; if (!ok) saved.select(); };
+      try { navigator.clipboard.writeText(lastCase).then(() => by(true), () => by(byCommand(lastCase))); } catch (e) { by(byCommand(lastCase)); }
+    };
     for (const id of ['levelspan-summary', 'levelspan-warnings', 'levelspan-status', 'levelspan-facts']) byId(id).replaceChildren();
     byId('levelspan-limits').tBodies[0].replaceChildren();
     for (const c of document.querySelectorAll('canvas')) c.style.visibility = 'hidden';

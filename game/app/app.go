@@ -242,6 +242,9 @@ func (a *App) Solves() int { return a.solved.count }
 // Case is the case on the screen, with what a drag that is under way has made of it. It must not be changed.
 func (a *App) Case() *casefile.Case { return a.doc.current }
 
+// Committed is the case after the last finished change. It is never changed: another change is another case.
+func (a *App) Committed() *casefile.Case { return a.doc.committed }
+
 func (a *App) speedKind() string {
 	switch k := a.doc.current.Display.SpeedKind; k {
 	case "IAS", "TAS":
