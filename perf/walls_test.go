@@ -32,7 +32,7 @@ var walls = []struct {
 	{"wasm", []string{"levelspan/game/...", "levelspan/assets/...", "levelspan/perf/...", "github.com/hajimehoshi/ebiten/v2"}},
 	{"cmd/levelspan", []string{"levelspan/perf/...", "levelspan/assets/..."}},
 	{"cmd/levelspan-window", []string{"levelspan/game/...", "levelspan/perf/...", "levelspan/assets/...", "github.com/hajimehoshi/ebiten/v2"}},
-	{"cmd/pagebuild", []string{"levelspan/perf/...", "levelspan/assets/...", "levelspan/cmd/pagebuild/..."}},
+	{"cmd/pagebuild", []string{"levelspan/perf/...", "levelspan/assets/...", "levelspan/game/scene/...", "levelspan/cmd/pagebuild/..."}},
 }
 
 // Standard-library packages that the computation may not import: it has no files, clock, goroutines or screen.

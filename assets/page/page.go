@@ -34,6 +34,27 @@ var Mirror string
 //go:embed boot.js
 var Boot string
 
+// Offline keeps the hosted page in the browser and offers a newer one.
+//
+//go:embed offline.js
+var Offline string
+
+// Worker is the hosted page's service worker, without the list of its files.
+//
+//go:embed sw.js
+var Worker string
+
+// Offer is the bar in which the hosted page offers a newer version.
+const Offer = `<div id="levelspan-offer" role="group" aria-label="Newer version">
+<div><p role="status"></p><small></small></div><button type="button" hidden>Reload</button><button type="button" hidden>Later</button>
+</div>
+`
+
+// Theme colours what a browser shows around the installed page.
+const Theme = `<meta name="theme-color" content="#fcfbf7" media="(prefers-color-scheme: light)">
+<meta name="theme-color" content="#101418" media="(prefers-color-scheme: dark)">
+`
+
 // Icon is the icon of the page.
 //
 //go:embed icon.svg

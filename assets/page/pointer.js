@@ -86,7 +86,7 @@
     return KEYS[e.key] || 0;
   };
   const runeOf = e => !e.ctrlKey && !e.metaKey && !e.altKey && [...e.key].length === 1 && e.key !== ' ' ? e.key.codePointAt(0) : 0;
-  const elsewhere = el => el && el.closest && el.closest('#levelspan-copy,#levelspan-stop,#levelspan-shell');
+  const elsewhere = el => el && el.closest && el.closest('#levelspan-copy,#levelspan-stop,#levelspan-shell,#levelspan-offer');
 
   addEventListener('keydown', e => {
     if (elsewhere(e.target) || document.documentElement.dataset.ready !== 'true') return;

@@ -33,7 +33,7 @@ func (p *parts) hash() string {
 	for _, s := range p.scripts() {
 		h.Write([]byte(s.Text))
 	}
-	h.Write([]byte(page.Shell + page.Style + page.Icon))
+	h.Write([]byte(page.Shell + page.Style + page.Icon + page.Offline + page.Worker + page.Offer + page.Theme))
 	return hex.EncodeToString(h.Sum(nil))[:8]
 }
 
@@ -50,10 +50,10 @@ func icon() string {
 	return "data:image/svg+xml," + strings.ReplaceAll(url.QueryEscape(page.Icon), "+", "%20")
 }
 
-// fill puts the parts in the places that the shell marks.
-func (p *parts) fill(policy, style, program, scripts string) (string, error) {
+// fill puts the parts in the places that the shell marks. Install and offer are the hosted page's alone.
+func (p *parts) fill(policy, style, program, scripts, install, offer string) (string, error) {
 	marks := map[string]string{"VERSION": html.EscapeString(p.shown()), "POLICY": html.EscapeString(policy), "ICON": icon(),
-		"STYLE": style, "PROGRAM": program, "SCRIPTS": scripts}
+		"STYLE": style, "PROGRAM": program, "SCRIPTS": scripts, "INSTALL": install, "OFFER": offer}
 	var out strings.Builder
 	rest := page.Shell
 	for {
@@ -100,11 +100,11 @@ func (p *parts) single() (string, error) {
 	}
 	policy += "; style-src " + source(page.Style) + "; img-src data:; connect-src 'none'; base-uri 'none'; form-action 'none'"
 	program := fmt.Sprintf("<script type=\"text/plain\" id=\"levelspan-program\" data-size=\"%d\">%s</script>", len(p.Wasm), base64.StdEncoding.EncodeToString(packed))
-	return p.fill(policy, "<style>"+page.Style+"</style>", program, strings.TrimSuffix(scripts.String(), "\n"))
+	return p.fill(policy, "<style>"+page.Style+"</style>", program, strings.TrimSuffix(scripts.String(), "\n"), "", "")
 }
 
-// site is the page split for hosting: names to contents. All but index.html carry the hash of their content in their
-// name, so they may be kept for ever.
+// site is the page split for hosting, and installable: names to contents. All but index.html, the manifest and the
+// service worker carry the hash of their content in their name, so they may be kept for ever.
 func (p *parts) site() (map[string][]byte, error) {
 	files := map[string][]byte{}
 	name := func(stem, ext string, data []byte) string {
@@ -114,16 +114,24 @@ func (p *parts) site() (map[string][]byte, error) {
 		return n
 	}
 	var scripts strings.Builder
-	for _, s := range p.scripts() {
+	for _, s := range append(p.scripts(), script{"offline", page.Offline}) {
 		fmt.Fprintf(&scripts, "<script src=\"%s\"></script>\n", name(s.Name, "js", []byte(s.Text)))
 	}
 	style := fmt.Sprintf("<link rel=\"stylesheet\" href=\"%s\">", name("page", "css", []byte(page.Style)))
 	program := fmt.Sprintf("<template id=\"levelspan-source\" data-href=\"%s\" data-size=\"%d\"></template>", name("levelspan", "wasm", p.Wasm), len(p.Wasm))
-	policy := "default-src 'none'; script-src 'self' 'wasm-unsafe-eval'; style-src 'self'; img-src data:; connect-src 'self'; base-uri 'none'; form-action 'none'"
-	text, err := p.fill(policy, style, program, strings.TrimSuffix(scripts.String(), "\n"))
+	manifest, touch, err := p.manifest(name)
+	if err != nil {
+		return nil, err
+	}
+	files[manifestName] = manifest
+	install := fmt.Sprintf("<link rel=\"manifest\" href=\"%s\">\n<link rel=\"apple-touch-icon\" href=\"%s\">\n"+page.Theme, manifestName, touch)
+	policy := "default-src 'none'; script-src 'self' 'wasm-unsafe-eval'; style-src 'self'; img-src 'self' data:; connect-src 'self'; " +
+		"worker-src 'self'; manifest-src 'self'; base-uri 'none'; form-action 'none'"
+	text, err := p.fill(policy, style, program, strings.TrimSuffix(scripts.String(), "\n"), install, page.Offer)
 	if err != nil {
 		return nil, err
 	}
 	files["index.html"] = []byte(text)
+	files[workerName] = p.worker(files)
 	return files, nil
 }

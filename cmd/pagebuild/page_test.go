@@ -4,8 +4,11 @@ import (
 	"bytes"
 	"compress/gzip"
 	"encoding/base64"
+	"encoding/json"
 	"encoding/xml"
+	"fmt"
 	"html"
+	"image/png"
 	"io"
 	"regexp"
 	"strings"
@@ -135,9 +138,18 @@ func TestSiteIsWhole(t *testing.T) {
 		t.Fatal(err)
 	}
 	index := string(files["index.html"])
-	named := regexp.MustCompile(`(?:src|href)="([a-z_]+-[0-9a-f]{12}\.(?:js|css|wasm))"`).FindAllStringSubmatch(index, -1)
-	if len(named) != len(files)-1 || len(named) != 7 {
-		t.Errorf("the page names %d files and %d are there beside it", len(named), len(files)-1)
+	named := regexp.MustCompile(`(?:src|href)="([a-z0-9_-]+-[0-9a-f]{12}\.(?:js|css|wasm|png))"`).FindAllStringSubmatch(index, -1)
+	if len(named) != 9 {
+		t.Errorf("the page names %d files", len(named))
+	}
+	if !strings.Contains(index, `rel="manifest" href="`+manifestName+`"`) {
+		t.Error("the page names no manifest")
+	}
+	for n := range files { // the worker keeps all of them, and itself not
+		kept := strings.Contains(string(files[workerName]), `"`+n+`"`) || n == "index.html" && strings.Contains(string(files[workerName]), `"./"`)
+		if kept == (n == workerName) {
+			t.Errorf("%s: kept by the worker is %v", n, kept)
+		}
 	}
 	for _, n := range named {
 		if files[n[1]] == nil {
@@ -156,5 +168,39 @@ func TestSiteIsWhole(t *testing.T) {
 func TestIconIsXML(t *testing.T) {
 	if err := xml.Unmarshal([]byte(page.Icon), new(struct{})); err != nil {
 		t.Error(err)
+	}
+}
+
+// The manifest's icons are pictures of the sizes that it says, and the maskable ones are opaque to their corners.
+func TestManifestIcons(t *testing.T) {
+	files, err := sample().site()
+	if err != nil {
+		t.Fatal(err)
+	}
+	var m struct {
+		Name    string
+		Start   string `json:"start_url"`
+		Display string
+		Icons   []struct{ Src, Sizes, Type, Purpose string }
+	}
+	if err := json.Unmarshal(files[manifestName], &m); err != nil {
+		t.Fatal(err)
+	}
+	if m.Name != "levelspan" || m.Start != "./" || m.Display != "standalone" || len(m.Icons) != 4 {
+		t.Errorf("manifest %+v", m)
+	}
+	for _, i := range m.Icons {
+		picture, err := png.Decode(bytes.NewReader(files[i.Src]))
+		if err != nil {
+			t.Errorf("%s: %v", i.Src, err)
+			continue
+		}
+		size := picture.Bounds().Size()
+		if got := fmt.Sprintf("%dx%d", size.X, size.Y); got != i.Sizes || i.Type != "image/png" {
+			t.Errorf("%s is %s, said to be %s %s", i.Src, got, i.Sizes, i.Type)
+		}
+		if _, _, _, alpha := picture.At(0, 0).RGBA(); (alpha == 0xffff) != (i.Purpose == "maskable") {
+			t.Errorf("%s, %s: alpha of the corner %d", i.Src, i.Purpose, alpha)
+		}
 	}
 }

@@ -72,12 +72,14 @@ func siteHandler(dir string) http.Handler {
 		h.Set("X-Content-Type-Options", "nosniff")
 		h.Set("Vary", "Accept-Encoding")
 		h.Set("Cache-Control", "public, max-age=31536000, immutable")
-		if name == "index.html" {
+		if name == "index.html" || name == manifestName || name == workerName {
 			h.Set("Cache-Control", "no-cache")
 		}
 		switch ext := path.Ext(name); ext {
 		case ".wasm":
 			h.Set("Content-Type", "application/wasm")
+		case ".webmanifest":
+			h.Set("Content-Type", "application/manifest+json")
 		default:
 			h.Set("Content-Type", mime.TypeByExtension(ext))
 		}
