@@ -126,20 +126,36 @@ func newTab(t *testing.T, width, height int, scale float64, touch bool) *tab {
 			return
 		}
 		browser.profile = profile
-		options := append(chromedp.DefaultExecAllocatorOptions[:],
-			chromedp.ExecPath(path), chromedp.NoSandbox, chromedp.UserDataDir(profile),
-			chromedp.Flag("headless", "new"), chromedp.Flag("enable-unsafe-swiftshader", true),
-			chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-background-networking", true))
-		allocator, stopAllocator := chromedp.NewExecAllocator(context.Background(), options...)
-		ctx, stop := chromedp.NewContext(allocator)
-		browser.ctx = ctx
-		browser.stop = func() { stop(); stopAllocator(); os.RemoveAll(profile) }
-		browser.err = chromedp.Do(ctx)
+		ctx, stop, err := startBrowser(path, profile)
+		browser.ctx, browser.err = ctx, err
+		browser.stop = func() { stop(); os.RemoveAll(profile) }
 	})
 	if browser.err != nil {
 		t.Fatal(browser.err)
 	}
-	ctx, stop := chromedp.NewContext(browser.ctx, chromedp.WithNewBrowserContext())
+	return tabOf(t, browser.ctx, width, height, scale, touch, chromedp.WithNewBrowserContext())
+}
+
+// startBrowser starts a Chromium with a profile directory.
+func startBrowser(path, profile string) (context.Context, func(), error) {
+	options := append(chromedp.DefaultExecAllocatorOptions[:],
+		chromedp.ExecPath(path), chromedp.NoSandbox, chromedp.UserDataDir(profile),
+		chromedp.Flag("headless", "new"), chromedp.Flag("enable-unsafe-swiftshader", true),
+		chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-background-networking", true))
+	allocator, stopAllocator := chromedp.NewExecAllocator(context.Background(), options...)
+	ctx, stop := chromedp.NewContext(allocator)
+	return ctx, func() { stop(); stopAllocator() }, chromedp.Do(ctx)
+}
+
+// beside opens another tab that shares this one's storage.
+func (b *tab) beside(width, height int) *tab {
+	return tabOf(b.t, b.ctx, width, height, 1, false)
+}
+
+// tabOf opens an empty tab in a browser, or beside another tab.
+func tabOf(t *testing.T, parent context.Context, width, height int, scale float64, touch bool, options ...chromedp.ContextOption) *tab {
+	t.Helper()
+	ctx, stop := chromedp.NewContext(parent, options...)
 	ctx, stopTime := context.WithTimeout(ctx, 4*time.Minute)
 	t.Cleanup(func() { stopTime(); stop() })
 	b := &tab{t: t, ctx: ctx}
