@@ -101,11 +101,18 @@
     for (const k of keys) { const el = map.get(k); if (el !== next) parent.insertBefore(el, next); else next = next.nextSibling; }
   };
 
-  // Live regions speak after half a second of quiet, and only what is new.
+  // Live regions speak after half a second without any change of what is drawn, and only what is new.
   const waiting = new Map();
-  const announce = (id, said) => {
-    clearTimeout(waiting.get(id));
-    waiting.set(id, setTimeout(() => { const el = byId(id); if (el.textContent !== said) el.textContent = said; }, 500));
+  let speaking = 0;
+  const announce = (id, said) => waiting.set(id, said);
+  const speakLater = () => {
+    if (!waiting.size) return;
+    clearTimeout(speaking);
+    speaking = setTimeout(() => {
+      if (L.dead) return;
+      for (const [id, said] of waiting) { const el = byId(id); if (el.textContent !== said) el.textContent = said; }
+      waiting.clear();
+    }, 500);
   };
 
   const ALLOWED = /^(aria-[a-z]+|disabled|inert|tabindex|data-[a-z-]+|role)$/;
@@ -144,6 +151,7 @@
         DO[f[0]](f.slice(1));
       }
     } catch (e) { L.fail('The mirror of the drawing failed: ' + e.message); } finally { busy = false; }
+    speakLater();
     enter();
   };
 
