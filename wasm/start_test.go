@@ -3,6 +3,7 @@
 package main
 
 import (
+	"fmt"
 	"os/exec"
 	"path/filepath"
 	"slices"
@@ -58,5 +59,37 @@ func TestStart(t *testing.T) {
 	}
 	if ratio := median("as it comes") / base; ratio > mostStart {
 		t.Errorf("the first chart takes %.2f times as long as an empty page, more than %.1f", ratio, mostStart)
+	}
+}
+
+// TestDecode loads the page in one file with the browser's own base64 decoder and without it. Neither way calls back for
+// each of the program's millions of bytes, and both give the program.
+func TestDecode(t *testing.T) {
+	for _, own := range []bool{true, false} {
+		b := newTab(t, 800, 600, 1, false)
+		b.before(fmt.Sprintf(`globalThis.long = 0; globalThis.spent = 0; globalThis.own = false; {
+			const list = [].map, last = [].findLast, apply = Reflect.apply;
+			const many = (object, name) => { const f = object[name]; object[name] = function (...a) {
+				const act = apply(last, a, [x => typeof x === 'function']);
+				return apply(f, this, apply(list, a, [x => x !== act || !act ? x : function (...b) { if (++calls > 100000) long++; return apply(act, this, b); }]));
+			}; };
+			let calls = 0, from = 0;
+			many(Uint8Array, 'from'); many(Array, 'from'); many(Array.prototype, 'map'); many(Array.prototype, 'forEach'); many(String.prototype, 'replace');
+			many(Object.getPrototypeOf(Uint8Array.prototype), 'map'); many(Object.getPrototypeOf(Uint8Array.prototype), 'forEach');
+			const began = f => f && function (...a) { from = from || performance.now(); return f.apply(this, a); };
+			const native = Uint8Array.fromBase64;
+			if (%v) Uint8Array.fromBase64 = began((...a) => { own = true; return native.apply(Uint8Array, a); }); else delete Uint8Array.fromBase64;
+			window.atob = began(atob);
+			const B = Blob; window.Blob = function (...a) { spent = spent || performance.now() - from; return new B(...a); };
+		}`, own))
+		b.open(singleFile(t))
+		b.agree("decoding")
+		t.Logf("own decoder %v: %.0f ms", own, eval[float64](b, "spent"))
+		if eval[bool](b, "globalThis.own") != own {
+			t.Errorf("the browser's decoder: used %v, want %v", !own, own)
+		}
+		if n := eval[int](b, "long"); n > 0 || eval[float64](b, "spent") <= 0 {
+			t.Errorf("%d calls back for a byte each", n)
+		}
 	}
 }

@@ -180,8 +180,12 @@ func slimModule(ctx context.Context, dir, program string) (string, error) {
 	if err := copyFile(filepath.Join(library, "go.mod"), filepath.Join(home, "go.mod"), nil); err != nil {
 		return "", err
 	}
-	if err := copyFile(filepath.Join(library, shaderFile), filepath.Join(home, shaderFile), withoutTemplate); err != nil {
-		return "", err
+	for name, change := range map[string]func([]byte) ([]byte, error){
+		shaderFile: withoutTemplate, shadersFile: replaced(shadersFile, lateShaders), contextFile: replaced(contextFile, lateContext),
+	} {
+		if err := copyFile(filepath.Join(library, name), filepath.Join(home, name), change); err != nil {
+			return "", err
+		}
 	}
 	own, err := exec.CommandContext(ctx, "go", "env", "GOMOD").Output()
 	if err != nil {
