@@ -26,9 +26,8 @@ func TestStart(t *testing.T) {
 		{"empty", "file://" + filepath.ToSlash(filepath.Join(dist, "levelspan.html")) + "?surface=webgl", "webgl"},
 		{"as it comes", singleFile(t), ""},
 		{"webgl", singleFile(t) + "?surface=webgl", "webgl"},
-		{"software", singleFile(t) + "?surface=software", "software"},
 	}
-	const rounds = 7
+	const rounds = 5
 	times := map[string][]float64{}
 	for round := range rounds + 1 {
 		for _, p := range pages {
