@@ -141,6 +141,18 @@ func TestFailWithTheDemo(t *testing.T) {
 	b.until("/copied|select/i.test(document.querySelectorAll('#levelspan-stop button')[1].textContent)")
 }
 
+// TestLongDrag drags for longer than the heartbeat waits, without a pause: the program answers all the time.
+func TestLongDrag(t *testing.T) {
+	for _, surface := range []string{"software", "webgl"} {
+		b := newTab(t, 1000, 700, 1, false)
+		b.open(singleFile(t) + "?surface=" + surface)
+		for range 4 {
+			b.paints() // says if the page has stopped
+		}
+		b.agree("a long drag")
+	}
+}
+
 // TestNoFalseAlarm lets what is no fault look like one: a hidden page, turns that come late, a long pause with the work
 // done after it. The page goes on.
 func TestNoFalseAlarm(t *testing.T) {

@@ -110,7 +110,8 @@ type drag struct{ Rate, Cost float64 }
 // hands over a patch for the mirror with each scene that it shows, and the next frame is asked for when the browser has
 // taken the last.
 func (b *tab) paints() drag {
-	return eval[drag](b, `new Promise(done => {
+	b.t.Helper()
+	d := eval[drag](b, `new Promise(done => {
 		const box = document.querySelector('[data-handle=mass]').getBoundingClientRect(), layer = document.getElementById('levelspan-layer');
 		const x = box.x + box.width / 2, y = box.y + box.height / 2;
 		const send = (kind, dx) => layer.dispatchEvent(new PointerEvent(kind, {bubbles: true, pointerId: 7, pointerType: 'touch', clientX: x + dx, clientY: y, button: 0, buttons: 1}));
@@ -125,6 +126,7 @@ func (b *tab) paints() drag {
 		const step = () => {
 			const now = performance.now() - from;
 			if (now > 2000) {
+				send('pointermove', 0);                    // back, so that the next drag has as far to go
 				send('pointerup', 0);
 				levelspan.patch = patch;
 				levelspan.onpaint = paint;
@@ -132,11 +134,15 @@ func (b *tab) paints() drag {
 				return;
 			}
 			i++;
-			send('pointermove', -120 + Math.abs(3 * i % 200 - 100));
+			send('pointermove', -110 + Math.abs(3 * i % 200 - 100));
 			requestAnimationFrame(step);
 		};
 		requestAnimationFrame(step);
 	})`, awaitPromise)
+	if d.Rate == 0 || !eval[bool](b, "document.getElementById('levelspan-stop').hidden") {
+		b.t.Fatalf("dragging has stopped the page: %s", eval[string](b, "document.querySelector('#levelspan-stop pre').textContent"))
+	}
+	return d
 }
 
 // TestSoftwareIsFast drags on both surfaces in turn at 1280x800, without a graphics processor: the software surface

@@ -254,22 +254,24 @@
   // its turns, the program has stopped. A page that is hidden, a machine that sleeps and a debugger that halts do not
   // count: then the turns come late or not at all. Nothing runs while nothing is owed.
   const TURN = 500, TURNS = 6;
-  let owed = false;
+  let owed = false, watched = false, answers = 0;
   L.owe = () => {
-    if (owed || document.documentElement.dataset.ready !== 'true') return;
     owed = true;
-    let missed = 0, last = performance.now();
+    if (watched || document.documentElement.dataset.ready !== 'true') return;
+    watched = true;
+    let missed = 0, last = performance.now(), seen = answers;
     const turn = () => {
-      if (!owed || L.dead) return;
+      if (!owed || L.dead) { watched = false; return; }
       const now = performance.now();
-      if (document.hidden || now - last > 3 * TURN) missed = 0; else missed++;
+      if (document.hidden || now - last > 3 * TURN || answers !== seen) missed = 0; else missed++;
       last = now;
+      seen = answers;
       if (missed >= TURNS) L.fail('The program has not answered for ' + TURN * TURNS / 1000 + ' seconds.');
       else raf(() => setTimeout(turn, TURN));
     };
     setTimeout(turn, TURN);
   };
-  L.beat = () => { owed = false; };
+  L.beat = () => { owed = false; answers++; };
 
   // Links.
   L.base = () => { try { return location.href.replace(/#.*$/, ''); } catch (e) { return ''; } };
