@@ -137,11 +137,12 @@ func newTab(t *testing.T, width, height int, scale float64, touch bool) *tab {
 }
 
 // startBrowser starts a Chromium with a profile directory.
-func startBrowser(path, profile string) (context.Context, func(), error) {
+func startBrowser(path, profile string, more ...chromedp.ExecAllocatorOption) (context.Context, func(), error) {
 	options := append(chromedp.DefaultExecAllocatorOptions[:],
 		chromedp.ExecPath(path), chromedp.NoSandbox, chromedp.UserDataDir(profile),
 		chromedp.Flag("headless", "new"), chromedp.Flag("enable-unsafe-swiftshader", true),
 		chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-background-networking", true))
+	options = append(options, more...)
 	allocator, stopAllocator := chromedp.NewExecAllocator(context.Background(), options...)
 	ctx, stop := chromedp.NewContext(allocator)
 	return ctx, func() { stop(); stopAllocator() }, chromedp.Do(ctx)

@@ -8,8 +8,6 @@ import (
 	"os"
 	"path/filepath"
 	"testing"
-
-	"github.com/chromedp/cdproto/input"
 )
 
 var measure = flag.Bool("measure", false, "measure the page instead of only testing it")
@@ -31,24 +29,34 @@ func TestMeasure(t *testing.T) {
 		b.open(address)
 		first := eval[float64](b, "performance.getEntriesByName('levelspan-first-chart')[0].startTime")
 		fmt.Printf("%4d x %4d first chart  %.0f ms after navigation\n", size[0], size[1], first)
-		x, y := b.control("handle/mass").middle()
-		b.mouse(input.DispatchMouseEventTypeMousePressed, x, y, 1)
-		b.mouse(input.DispatchMouseEventTypeMouseMoved, x-6, y, 0)
-		rate := eval[float64](b, fmt.Sprintf(`new Promise(done => {
-			const layer = document.getElementById('levelspan-layer'), slider = document.querySelector('[data-handle=mass]');
-			const start = performance.now();
-			let frames = 0, values = 0, last = '', i = 0;
-			const turn = () => {
-				if (slider.getAttribute('aria-valuenow') !== last) { values++; last = slider.getAttribute('aria-valuenow'); }
-				frames++;
-				i += 2;
-				layer.dispatchEvent(new PointerEvent('pointermove', {pointerId: 1, pointerType: 'mouse', clientX: %f - Math.abs(80 - i %% 160), clientY: %f, bubbles: true}));
-				if (performance.now() - start < 5000) requestAnimationFrame(turn);
-				else done(values / (performance.now() - start) * 1000);
-			};
-			requestAnimationFrame(turn);
-		})`, x, y), awaitPromise)
-		b.mouse(input.DispatchMouseEventTypeMouseReleased, x, y, 1)
-		fmt.Printf("%4d x %4d drag         %.1f frames/s, each with new figures\n", size[0], size[1], rate)
+		b.paints()
+		for _, p := range b.parts() {
+			fmt.Printf("%4d x %4d %s\n", size[0], size[1], p)
+		}
 	}
+}
+
+// parts drags on the software surface and says where the script's time goes, a picture, by the clock at each call that
+// the program makes of the page.
+func (b *tab) parts() []string {
+	eval[bool](b, `(() => {
+		const {drain, beat, patch, blit, onpaint} = levelspan, now = () => performance.now();
+		const t = globalThis.spent = {drain: 0, step: 0, patch: 0, paint: 0, blits: 0, rest: 0, frames: 0, pieces: 0, pixels: 0};
+		let last = 0, at = '';
+		const to = part => { const n = now(); if (at) t[at] += n - last; last = n; at = part; };
+		levelspan.onpaint = (...a) => { to('drain'); onpaint(...a); to(''); t.frames++; };
+		levelspan.drain = () => { const n = drain(); to('step'); return n; };
+		levelspan.patch = text => { to('patch'); patch(text); to('rest'); };
+		levelspan.beat = () => { beat(); to('paint'); };
+		levelspan.blit = (x, y, w, h) => { to('blits'); blit(x, y, w, h); t.pieces++; t.pixels += w * h; to('paint'); };
+		return true;
+	})()`)
+	d := b.paints()
+	t := eval[map[string]float64](b, "spent")
+	out := []string{fmt.Sprintf("drag %.1f pictures/s, %.2f ms of script each; %.1f pieces of %.0f pixels in all", d.Rate, d.Cost, t["pieces"]/t["frames"], t["pixels"]/t["frames"])}
+	for _, p := range []struct{ name, text string }{{"drain", "the queue taken over"}, {"step", "the program: input, solve, scene, mirror's text"},
+		{"patch", "the mirror's elements"}, {"rest", "focus, heartbeat, the next frame asked for"}, {"paint", "rasterising and copying into the browser's memory"}, {"blits", "putImageData"}} {
+		out = append(out, fmt.Sprintf("     %5.2f ms %s", t[p.name]/t["frames"], p.text))
+	}
+	return out
 }

@@ -6,6 +6,8 @@ import (
 	"strings"
 	"testing"
 
+	"github.com/chromedp/chromedp"
+
 	"levelspan/game/app"
 	"levelspan/game/scene/raster"
 )
@@ -145,31 +147,44 @@ func (b *tab) paints() drag {
 	return d
 }
 
-// TestSoftwareIsFast drags on both surfaces in turn at 1280x800, without a graphics processor: the software surface
-// shows at least 50 pictures a second, and three times as many as WebGL drawn by the processor in the same run.
+// TestSoftwareIsFast drags on both surfaces in turn at 1280x800, without a graphics processor. The software surface shows
+// at least 50 pictures a second in a browser as it is, which shows no more than 60. In one that shows as many as it can,
+// both surfaces alike, it shows at least three times as many as WebGL drawn by the processor.
 func TestSoftwareIsFast(t *testing.T) {
+	if chromium() == "" {
+		without(t, "Chromium")
+	}
+	profile := t.TempDir()
+	free, stop, err := startBrowser(chromium(), profile, chromedp.Flag("disable-frame-rate-limit", true), chromedp.Flag("disable-gpu-vsync", true))
+	t.Cleanup(stop)
+	if err != nil {
+		t.Fatal(err)
+	}
 	best := map[string]drag{}
-	measure := func() {
-		for _, surface := range []string{"webgl", "software"} {
-			b := newTab(t, 1280, 800, 1, false)
-			b.open(singleFile(t) + "?surface=" + surface)
-			b.paints() // the browser compiles the program better while it runs
-			for range 2 {
-				if d := b.paints(); d.Rate > best[surface].Rate {
-					best[surface] = d
-				}
+	measure := func(name, surface string, b *tab) {
+		b.open(singleFile(t) + "?surface=" + surface)
+		b.paints() // the browser compiles the program better while it runs
+		for range 2 {
+			if d := b.paints(); d.Rate > best[name].Rate {
+				best[name] = d
 			}
 		}
+		b.do(chromedp.Navigate("about:blank"))
 	}
 	enough := func() bool {
-		return best["software"].Rate >= 50 && best["software"].Rate >= 3*best["webgl"].Rate
+		return best["software"].Rate >= 50 && best["software, free"].Rate >= 3*best["webgl, free"].Rate
 	}
 	for range 3 { // another program may have had the processor
-		if measure(); enough() {
+		measure("software", "software", newTab(t, 1280, 800, 1, false))
+		for _, surface := range []string{"webgl", "software"} {
+			measure(surface+", free", surface, tabOf(t, free, 1280, 800, 1, false, chromedp.WithNewBrowserContext()))
+		}
+		if enough() {
 			break
 		}
 	}
-	t.Logf("pictures a second: software %.1f (%.1f ms of script each), WebGL by the processor %.1f", best["software"].Rate, best["software"].Cost, best["webgl"].Rate)
+	t.Logf("pictures a second: software %.1f (%.1f ms of script each); without the limit of 60, software %.1f, WebGL by the processor %.1f",
+		best["software"].Rate, best["software"].Cost, best["software, free"].Rate, best["webgl, free"].Rate)
 	if !enough() {
 		t.Error("the software surface is not fast enough")
 	}
