@@ -36,6 +36,7 @@ type software struct {
 	bridge  *bridge
 	painter raster.Painter
 	picture *image.RGBA
+	scale   float64 // of the last scene
 	packed  []byte
 	buffer  js.Value // a Uint8ClampedArray as large as packed can become
 	dead    bool
@@ -72,7 +73,8 @@ func (w *software) paint(frame game.Frame, shown func(string), width, height, sc
 func (w *software) show(s *scene.Scene) {
 	var size image.Point
 	size.X, size.Y = s.DeviceSize()
-	if w.picture == nil || w.picture.Rect.Size() != size {
+	if w.picture == nil || w.picture.Rect.Size() != size || w.scale != s.Scale {
+		w.scale = s.Scale
 		w.picture = image.NewRGBA(image.Rectangle{Max: size})
 		w.packed = make([]byte, len(w.picture.Pix))
 		w.buffer = w.bridge.call("picture", size.X, size.Y)

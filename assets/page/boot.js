@@ -48,12 +48,21 @@
     return Math.min(real(), 3, Math.max(longest * 2 > 4096 ? 1 : 2, 2600 / longest));
   };
   if (own && own.get) Object.defineProperty(window, 'devicePixelRatio', {configurable: true, get: ratio});
+  // Browsers tell of a change by the media query, most by a change of size too, some only when the window is looked at again.
+  let seen = real();
+  const look = () => {
+    if (real() === seen) return;
+    seen = real();
+    L.resized();
+    watch();
+  };
   const watch = () => {
     if (!window.matchMedia) return;
-    const now = matchMedia('(resolution: ' + real() + 'dppx)');
-    const changed = () => { L.resized(); watch(); };
-    if (now.addEventListener) now.addEventListener('change', changed, {once: true});
+    const now = matchMedia('(resolution: ' + seen + 'dppx)');
+    if (now.addEventListener) now.addEventListener('change', look, {once: true});
   };
+  for (const t of ['resize', 'focus', 'pageshow']) addEventListener(t, look, true);
+  document.addEventListener('visibilitychange', look);
   watch();
 
   // The drawing library asks for a context with the browser's defaults. The drawing smooths its own edges and covers all
