@@ -67,10 +67,20 @@
 
   // The drawing library asks for a context with the browser's defaults. The drawing smooths its own edges and covers all
   // of its canvas: many samples a pixel and a blend with the page below would cost much and show nothing.
+  // And it takes every answer for granted: no context is said as null, a context that is lost already is none, and one that is
+  // lost later answers in numbers until it is left.
   const plain = HTMLCanvasElement.prototype.getContext;
   HTMLCanvasElement.prototype.getContext = function (kind, options, ...more) {
-    if (kind === 'webgl2') options = Object.assign({}, options, {antialias: false, alpha: false, depth: false});
-    return plain.call(this, kind, options, ...more);
+    if (kind !== 'webgl2') return plain.call(this, kind, options, ...more);
+    let g = null;
+    try { g = plain.call(this, kind, Object.assign({}, options, {antialias: false, alpha: false, depth: false}), ...more); } catch (e) { /* none */ }
+    if (!g || g.isContextLost()) return null;
+    for (const [name, instead] of [['getParameter', 4096], ['getProgramParameter', true]]) {
+      const ask = g[name];
+      if (Object.hasOwn(g, name)) continue;
+      g[name] = (...a) => { const v = ask.apply(g, a); return v === null && g.isContextLost() ? instead : v; };
+    }
+    return g;
   };
 
   // The program's bytes: inside this page, or beside it.

@@ -308,10 +308,14 @@
   });
   addEventListener('unhandledrejection', e => L.fail(String(e.reason)));
 
-  // The drawing library reloads the page when the graphics context is lost, and with it goes the work: stop that.
+  // The drawing library reloads the page when the graphics context is lost, even one that has been left, and with it goes
+  // the work: it is not told.
+  const listen = EventTarget.prototype.addEventListener;
+  HTMLCanvasElement.prototype.addEventListener = function (type, ...more) {
+    if (type !== 'webglcontextlost') listen.call(this, type, ...more);
+  };
   addEventListener('webglcontextlost', e => {
     if (!e.target.isConnected) return;
-    e.stopImmediatePropagation();
     e.preventDefault();
     L.lose();
   }, true);
