@@ -146,8 +146,8 @@ func TestLongDrag(t *testing.T) {
 	for _, surface := range []string{"software", "webgl"} {
 		b := newTab(t, 1000, 700, 1, false)
 		b.open(singleFile(t) + "?surface=" + surface)
-		for range 4 {
-			b.paints() // says if the page has stopped
+		for range 2 {
+			b.paints() // two seconds; says if the page has stopped
 		}
 		b.agree("a long drag")
 	}
