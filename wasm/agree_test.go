@@ -9,23 +9,51 @@ import (
 	"image"
 	"image/color"
 	"math"
+	"os"
 	"os/exec"
+	"path/filepath"
 	"slices"
 	"strings"
+	"testing"
 )
 
 // command runs the levelspan command and gives what it prints.
 func (b *tab) command(stdin string, args ...string) string {
 	b.t.Helper()
+	out, err := b.tryCommand(stdin, args...)
+	b.check(err)
+	return out
+}
+
+// tryCommand is command where being refused is an answer too.
+func (b *tab) tryCommand(stdin string, args ...string) (string, error) {
+	b.t.Helper()
+	buildAll(b.t)
 	cmd := exec.Command(built.command, args...)
 	cmd.Stdin = strings.NewReader(stdin)
 	var errs bytes.Buffer
 	cmd.Stderr = &errs
 	out, err := cmd.Output()
 	if err != nil && cmd.ProcessState.ExitCode() != 1 {
-		b.t.Fatalf("levelspan %s: %v\n%s", strings.Join(args, " "), err, errs.String())
+		return "", fmt.Errorf("levelspan %s: %w\n%s", strings.Join(args, " "), err, errs.String())
 	}
-	return string(out)
+	return string(out), nil
+}
+
+// marram is the demonstration's case file.
+func marram(t *testing.T) string {
+	t.Helper()
+	text, err := os.ReadFile(filepath.Join("..", "assets", "case", "marram.json"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	return string(text)
+}
+
+// quoted is a text as JSON and as a script.
+func quoted(s string) string {
+	text, _ := json.Marshal(s)
+	return string(text)
 }
 
 // activate does what a screen reader does: it activates a control's element without a pointer.
