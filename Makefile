@@ -64,6 +64,7 @@ shots: deps
 	mkdir -p shots
 	$(GO) test ./game/app -run TestShots -count=1 -shots "$(CURDIR)/shots"
 	LEVELSPAN_OUTSIDE=required $(GO) test ./wasm -run TestShots -count=1 -shots "$(CURDIR)/shots"
+	LEVELSPAN_OUTSIDE=required $(GO) test ./wasm/engines -count=1 -shots "$(CURDIR)/shots"
 
 fuzz:
 	@for p in $$($(GO) list ./perf/... ./game/... ./wasm); do \
