@@ -61,7 +61,10 @@ var injections = []injection{
 // left to read, the case offered for copying is the one last seen, and after loading again it is there.
 func TestFailLoudly(t *testing.T) {
 	for _, surface := range []string{"software", "webgl"} {
-		for _, i := range injections {
+		for n, i := range injections {
+			if surface == "webgl" && n > 3 {
+				continue // the scripts of the page are the same on either surface
+			}
 			t.Run(surface+"/"+i.name, func(t *testing.T) {
 				b := newTab(t, 1000, 700, 1, false)
 				if i.arm != "" {
