@@ -36,7 +36,7 @@ check:
 # The browser and the window are tested in the same run: LEVELSPAN_OUTSIDE=required makes their absence a failure. They
 # are built by the tests themselves, so a result that Go remembers would say nothing about them: hence -count=1.
 unit:
-	LEVELSPAN_OUTSIDE=required $(GO) test -count=1 -timeout 14m ./...
+	LEVELSPAN_OUTSIDE=required $(GO) test -count=1 -timeout 40m ./...
 
 # The computation and the wire formats once more as WebAssembly, the instruction set that they run on in the page.
 node:

@@ -24,12 +24,14 @@ const usage = `usage:
   levelspan limits CASE.json [--json] [--gradient G]
                                 every limit, ceiling and inverse answer for "today";
                                 G asks how much still climbs at that gradient, as 0.033
+  levelspan fit CASE.json [--json]
+                                the aeroplane's numbers from its runs, with 95 % intervals
   levelspan link CASE.json      the share link's fragment
   levelspan open FRAGMENT       the case of a fragment, or of a whole link
   levelspan schema              the JSON Schema of a case file
   levelspan version
 - in place of CASE.json or FRAGMENT reads standard input.
-Exit status: 0 done; 1 no level flight is possible (the answer printed says why); 2 bad usage or input.
+Exit status: 0 done; 1 no level flight is possible, or the fit did not converge (the answer printed says why); 2 bad usage or input.
 `
 
 // maxInput bounds what is read: the case file's own bound, and one byte to notice more.
@@ -52,6 +54,8 @@ func doMain(args []string, stdin io.Reader, stdout, stderr io.Writer) int {
 	switch name {
 	case "limits":
 		return c.limits(rest)
+	case "fit":
+		return c.fit(rest)
 	case "link":
 		return c.link(rest)
 	case "open":

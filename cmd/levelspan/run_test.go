@@ -119,7 +119,7 @@ func TestSchemaVersionAndHelp(t *testing.T) {
 	if code, text, problems := run("", "--help"); code != 0 || text != usage || problems != "" {
 		t.Errorf("help: code %d, %q, %q", code, text, problems)
 	}
-	for _, later := range []string{"fit", "advise", "trip", "card"} {
+	for _, later := range []string{"advise", "trip", "card"} {
 		if strings.Contains(usage, "levelspan "+later) {
 			t.Errorf("the usage promises %s", later)
 		}
@@ -213,4 +213,23 @@ func (endless) Read(b []byte) (int, error) {
 		b[i] = ' '
 	}
 	return len(b), nil
+}
+
+// fit prints the estimate, as a table and for programs; bad usage and bad input are 2.
+func TestFit(t *testing.T) {
+	path := file(t, demo)
+	code, text, problems := run("", "fit", path)
+	if code != 0 || problems != "" || !strings.Contains(text, "95 % interval") || !strings.Contains(text, "cd0") {
+		t.Fatalf("code %d, errors %q, out\n%s", code, problems, text)
+	}
+	code, object, problems := run(demo, "fit", "-", "--json")
+	var v map[string]any
+	if err := json.Unmarshal([]byte(object), &v); err != nil || code != 0 || problems != "" || v["format"] != "levelspan-fit" || v["version"] != 1.0 || v["converged"] != true {
+		t.Errorf("code %d, %v\n%s", code, err, object)
+	}
+	for _, args := range [][]string{{"fit"}, {"fit", path, path}, {"fit", "--gradient", "0.1", path}, {"fit", "--loud", path}, {"fit", filepath.Join(t.TempDir(), "none.json")}} {
+		if code, out, problems := run("", args...); code != 2 || out != "" || problems == "" {
+			t.Errorf("%v: code %d, out %q, errors %q", args, code, out, problems)
+		}
+	}
 }
