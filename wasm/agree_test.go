@@ -12,7 +12,9 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"regexp"
 	"slices"
+	"strconv"
 	"strings"
 	"testing"
 )
@@ -89,13 +91,15 @@ func (b *tab) caseFile() string {
 type row struct {
 	Key, Value, SetBy string
 	CAS, TAS, IAS     string
+	Low, High         string
 }
 
 func (b *tab) rows() []row {
 	b.t.Helper()
 	text := eval[string](b, `JSON.stringify([...document.querySelectorAll('#levelspan-limits tr[data-key]')].map(r => {
 		const v = r.querySelector('[data-cas-mps]'); return {Key: r.dataset.key, Value: v.textContent, SetBy: r.children[3].textContent,
-		CAS: v.dataset.casMps, TAS: v.dataset.tasMps, IAS: v.dataset.iasMps}; }))`)
+		CAS: v.dataset.casMps, TAS: v.dataset.tasMps, IAS: v.dataset.iasMps,
+		Low: v.dataset.low || '', High: v.dataset.high || ''}; }))`)
 	var rows []row
 	if err := json.Unmarshal([]byte(text), &rows); err != nil {
 		b.t.Fatal(err)
@@ -125,6 +129,8 @@ func (b *tab) agree(after string) string {
 			CAS float64 `json:"cas_mps"`
 			TAS float64 `json:"tas_mps"`
 			IAS float64 `json:"ias_mps"`
+
+			Interval []float64 `json:"interval_cas_mps"`
 		}
 	}
 	if err := json.Unmarshal([]byte(b.command(file, "limits", "-", "--json")), &answer); err != nil {
@@ -144,6 +150,15 @@ func (b *tab) agree(after string) string {
 		r := rows[i]
 		if !same(r.CAS, l.CAS) || !same(r.TAS, l.TAS) || !same(r.IAS, l.IAS) {
 			b.t.Errorf("after %s: %s is %s %s %s on the page (CAS, TAS, IAS), %v %v %v from the command", after, l.Key, r.CAS, r.TAS, r.IAS, l.CAS, l.TAS, l.IAS)
+		}
+		if shown := r.Low != "" && r.High != ""; shown != (len(l.Interval) == 2) {
+			b.t.Errorf("after %s: %s has the interval %q to %q on the page, %v from the command", after, l.Key, r.Low, r.High, l.Interval)
+		} else if shown {
+			for n, text := range []string{r.Low, r.High} {
+				if v, err := strconv.ParseFloat(text, 64); err != nil || math.Abs(v-l.Interval[n]) > 1e-6*v {
+					b.t.Errorf("after %s: %s has the interval %s to %s on the page, %v from the command", after, l.Key, r.Low, r.High, l.Interval)
+				}
+			}
 		}
 		if want := fmt.Sprintf("%.0f", l.CAS/knot); !strings.HasPrefix(r.Value, want) {
 			b.t.Errorf("after %s: %s is shown as %s, and is %s kt", after, l.Key, r.Value, want)
@@ -168,6 +183,7 @@ func tenths(mps string) string {
 
 // printed is the table that levelspan limits prints, a line a limit: CAS, IAS, TAS, what sets it.
 func printed(text string) (rows []string) {
+	spans := regexp.MustCompile(`[0-9.]+ to [0-9.]+`) // the intervals are compared by the JSON
 	column := -1
 	for line := range strings.Lines(text) {
 		r := []rune(strings.TrimSuffix(line, "\n"))
@@ -185,7 +201,7 @@ func printed(text string) (rows []string) {
 		if len(r) > column && r[column] != ' ' {
 			word, _, _ = strings.Cut(string(r[column:]), "  ")
 		}
-		figures := strings.Fields(string(r[:min(column, len(r))]))
+		figures := strings.Fields(spans.ReplaceAllString(string(r[:min(column, len(r))]), ""))
 		rows = append(rows, strings.Join(figures[max(0, len(figures)-3):], " ")+" "+word)
 	}
 	return rows

@@ -1,6 +1,8 @@
 package app
 
 import (
+	"strings"
+
 	"levelspan/perf"
 	"levelspan/perf/casefile/figure"
 	"levelspan/perf/casefile/report"
@@ -13,8 +15,17 @@ type limitRow struct {
 	symbol string
 	setBy  string // in a word, "" where nothing but the aeroplane's own curves does
 	value  string // whole units of the chosen kind
+	span   string // 95 % interval of the value, "" none
 	second string
 	aside  string // beside the name: the wind of best range
+}
+
+// spoken is the second line in words.
+func (r *limitRow) spoken() string {
+	if r.span == "" {
+		return r.second
+	}
+	return "between " + strings.Replace(r.span, "–", " and ", 1) + "; " + r.second
 }
 
 // limitRows is every limit that applies, in order of speed.
@@ -26,6 +37,9 @@ func (a *App) limitRows() []limitRow {
 		row := limitRow{key: k, name: a.report.Name(k), symbol: a.report.Symbol(k), setBy: a.report.SetBy(k),
 			value: a.units.SpeedWhole(inKind(l, kind)).Number}
 		row.second, row.aside = a.secondFigure(k, l)
+		if i, ok := a.solved.estimated.interval(k, kind); ok {
+			row.span = a.units.SpeedWhole(i.lo).Number + "–" + a.units.SpeedWhole(i.hi).Number
+		}
 		a.rows = append(a.rows, row)
 	}
 	return a.rows

@@ -15,7 +15,9 @@ func (a *App) describe() {
 	for i := range a.rows {
 		r := &a.rows[i]
 		l := &a.solved.answer.Limits[r.key]
-		rows = append(rows, MirrorRow{Key: r.key.String(), Name: r.name, Symbol: r.symbol, SetBy: r.setBy, ValueText: r.value, SecondText: r.second,
+		i, sure := a.solved.estimated.interval(r.key, "CAS")
+		rows = append(rows, MirrorRow{HasInterval: sure, LowCASMps: i.lo, HighCASMps: i.hi,
+			Key: r.key.String(), Name: r.name, Symbol: r.symbol, SetBy: r.setBy, ValueText: r.value, SecondText: r.spoken(),
 			TASMps: float64(l.TAS), CASMps: float64(l.CAS), IASMps: float64(l.IAS), Selected: a.view.marked && a.view.selected == r.key})
 	}
 	m.Rows = rows
@@ -40,5 +42,5 @@ func (a *App) summary() string {
 	}
 	kind := a.speedKind()
 	return "Level flight from " + u.SpeedWhole(inKind(slow, kind)).Number + " (" + a.report.SetBy(perf.SlowestLevel) + ") to " +
-		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + a.report.SetBy(perf.FastestLevel) + ")" + where
+		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + a.report.SetBy(perf.FastestLevel) + ")" + where + " " + a.solved.estimated.basis
 }

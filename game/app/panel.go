@@ -132,7 +132,7 @@ func (a *App) drawLimit(f *ui.Frame, r scene.Rect, row *limitRow) {
 	if f.Seen(r) {
 		a.drawLimitText(f, r, touch, row, selected, f.Pressed(id))
 	}
-	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.second,
+	f.Add(ui.Control{ID: id, Role: ui.RoleRow, Label: row.name, ValueText: row.value + " " + a.units.SpeedLabel() + ", " + row.spoken(),
 		Value: inKind(&a.solved.answer.Limits[row.key], a.speedKind()), Bounds: touch, Hit: touch, Selected: selected})
 }
 
@@ -176,7 +176,16 @@ func (a *App) drawLimitText(f *ui.Frame, r, touch scene.Rect, row *limitRow, sel
 		inline = aside
 	}
 	f.Label(style, scene.Rect{X: words.X, Y: base - 14, W: words.W, H: 16}, scene.Left, row.name, ink)
-	f.Label(scene.Small, scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}, scene.Left, fitting(row.second, inline, words.W), t.Muted)
+	line := scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}
+	if row.span != "" { // how sure the value is stands first; what does not fit beside it is left out
+		f.Label(scene.SmallBold, line, scene.Left, row.span, t.Muted)
+		w := scene.Measure(scene.SmallBold, row.span) + 8
+		line.X += w
+		line.W -= w
+	}
+	if text := fitting(row.second, inline, line.W); scene.Measure(scene.Small, text) <= line.W || row.span == "" {
+		f.Label(scene.Small, line, scene.Left, text, t.Muted)
+	}
 }
 
 // fitting is the longest form of a second figure that fits: with what stands beside the name, without, and without what

@@ -7,20 +7,17 @@ import (
 
 	"levelspan/game/ui"
 	"levelspan/perf"
+	"levelspan/perf/casefile/report"
 )
 
 // sameAsSolve compares the mirror with a solve of the same case made directly.
 func (p *pilot) sameAsSolve() {
 	p.t.Helper()
-	aero, cond, err := p.app.Case().Model()
+	r, err := report.New(p.app.Case())
 	if err != nil {
 		p.t.Fatal(err)
 	}
-	var solver perf.Solver
-	var want perf.Answer
-	if err := solver.Solve(&aero, &cond, &want); err != nil {
-		p.t.Fatal(err)
-	}
+	want := r.Answer
 	got := map[string]MirrorRow{}
 	for _, r := range p.app.Mirror().Rows {
 		got[r.Key] = r
@@ -493,14 +490,14 @@ func TestStallInBankIsTheStallOfThatBank(t *testing.T) {
 		if bank > 44 {
 			at = 60
 		}
-		aero, cond, err := c.Model()
+		answer, err := report.New(c)
 		if err != nil {
 			t.Fatal(err)
 		}
-		cond.Bank = at * perf.Degree
+		answer.Condition.Bank = at * perf.Degree
 		var solver perf.Solver
 		var want perf.Answer
-		if err := solver.Solve(&aero, &cond, &want); err != nil {
+		if err := solver.Solve(&answer.Aeroplane, &answer.Condition, &want); err != nil {
 			t.Fatal(err)
 		}
 		got := float64(want.Limits[perf.Stall].CAS)

@@ -5,6 +5,8 @@ import (
 
 	"levelspan/perf"
 	"levelspan/perf/casefile"
+	"levelspan/perf/casefile/report"
+	"levelspan/perf/estimate"
 )
 
 // curvePoints is how many points a drawn power curve has.
@@ -12,13 +14,14 @@ const curvePoints = 140
 
 // solved is what the model says of the case on the screen, and the curves that are drawn of it.
 type solved struct {
-	solver   perf.Solver
-	aero     perf.Aeroplane
-	cond     perf.Condition
-	answer   perf.Answer
-	revision uint64 // of the document that answer belongs to; 0: none yet
-	count    int    // solves of today's condition since the start; a test reads it
-	fault    string // why the last solve was refused, "" when it was not; answer is then the last good one
+	solver    perf.Solver
+	aero      perf.Aeroplane
+	cond      perf.Condition
+	answer    perf.Answer
+	revision  uint64 // of the document that answer belongs to; 0: none yet
+	estimated estimated
+	count     int    // solves of today's condition since the start; a test reads it
+	fault     string // why the last solve was refused, "" when it was not; answer is then the last good one
 
 	curveRevision uint64
 	curveKind     string
@@ -45,6 +48,13 @@ func (s *solved) refresh(d *document) {
 		s.fault = err.Error()
 		return
 	}
+	if !s.estimated.refresh(d) {
+		s.fault = "the estimate from the runs cannot be made: " + s.estimated.fault
+		return
+	}
+	if s.estimated.holds {
+		aero = s.estimated.aero
+	}
 	var answer perf.Answer
 	s.count++
 	if err := s.solver.Solve(&aero, &cond, &answer); err != nil {
@@ -53,6 +63,84 @@ func (s *solved) refresh(d *document) {
 	}
 	s.fault = ""
 	s.aero, s.cond, s.answer = aero, cond, answer
+	draws := estimate.DefaultDraws
+	if d.current != d.committed {
+		draws = dragDraws
+	}
+	s.estimated.span(&s.cond, draws)
+}
+
+// dragDraws is how many of the draws make the intervals under a moving finger, always the same first ones; all of them
+// follow when it lifts.
+const dragDraws = 64
+
+// estimated is what the runs make of the aeroplane: fitted anew when anything but today's mass and air has changed, and the
+// intervals of every figure of today.
+type estimated struct {
+	fitter    estimate.Estimator
+	posterior estimate.Posterior
+	draws     estimate.Draws
+	bands     estimate.Bands
+	intervals estimate.Intervals
+	aero      perf.Aeroplane
+	shape     uint64 // of the document that it belongs to; 0: none yet
+	holds     bool   // the fit converged: aero and intervals count
+	basis     string // what the numbers come from, in a sentence
+	fault     string
+}
+
+// refresh fits when the document's shape has changed; false: it cannot be made, and fault says why.
+func (e *estimated) refresh(d *document) bool {
+	if e.shape == d.shape {
+		return e.fault == ""
+	}
+	e.shape, e.holds, e.fault = d.shape, false, ""
+	c, err := d.current.Estimate()
+	if err == nil {
+		err = e.fitter.Fit(&c, &e.posterior)
+	}
+	if err != nil {
+		e.fault = err.Error()
+		return false
+	}
+	e.basis = report.Basis(&e.posterior)
+	if e.posterior.Converged {
+		e.posterior.Aeroplane(&e.aero)
+		e.draws.Set(&e.posterior, estimate.DefaultDraws)
+		e.holds = true
+	}
+	return true
+}
+
+// span solves so many of the draws for a condition.
+func (e *estimated) span(c *perf.Condition, draws int) {
+	if !e.holds {
+		return
+	}
+	err := e.bands.Start(&e.draws, c)
+	if err == nil {
+		e.bands.Step(draws)
+		err = e.bands.Intervals(&e.intervals)
+	}
+	if err != nil {
+		e.intervals = estimate.Intervals{}
+	}
+}
+
+// interval is that of a limit's speed in the chosen kind, m/s; false where it has none.
+func (e *estimated) interval(k perf.Key, kind string) (span, bool) {
+	if !e.holds || report.Placarded(k) {
+		return span{}, false
+	}
+	l := &e.intervals.Limits[k]
+	i := l.CAS
+	switch kind {
+	case "TAS":
+		i = l.TAS
+	case "IAS":
+		i = l.IAS
+	}
+	return span{i.Low, i.High}, i.Applies
 }
 
 // config is the configuration that today is flown in.

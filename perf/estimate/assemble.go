@@ -42,7 +42,7 @@ func (l *layout) assemble(x []float64, dst *perf.Aeroplane, configurations []per
 // slope ends.
 func (l *layout) calibrate(dst []perf.PositionErrorPoint, k *perf.Configuration, offset, slope float64) []perf.PositionErrorPoint {
 	start := len(dst)
-	ends := [2]float64{lowestShare * l.reference, highestShare * l.reference}
+	ends := [2]float64{lowestShare * l.reference, highestHeld(l.reference)}
 	table := k.PositionError
 	put := func(v perf.IAS) {
 		if len(dst) > start && !(v > dst[len(dst)-1].IAS) {

@@ -273,7 +273,12 @@ func (c *craft) put(l *layout, k *unknown, v float64) {
 
 // held is an indicated airspeed inside the stretch over which the slope counts.
 func held(v, reference float64) float64 {
-	return min(max(v, lowestShare*reference), highestShare*reference)
+	return min(max(v, lowestShare*reference), highestHeld(reference))
+}
+
+// highestHeld is the end of that stretch: no more than an airspeed indicator shows.
+func highestHeld(reference float64) float64 {
+	return min(highestShare*reference, perf.QuantityPositionErrorIAS.Domain().Max)
 }
 
 // cas is the calibrated airspeed of a reading.

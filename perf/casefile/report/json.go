@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 
 	"levelspan/perf"
+	"levelspan/perf/estimate"
 )
 
 // The format and version of JSON, from contract.md.
@@ -22,6 +23,8 @@ type (
 		Shortfall   float64    `json:"shortfall_w"`
 		ShortAt     *float64   `json:"shortfall_tas_mps,omitempty"`
 		Reason      string     `json:"reason,omitempty"`
+		Probability *float64   `json:"level_flight_probability,omitempty"`
+		Basis       string     `json:"basis"`
 		Limits      []limit    `json:"limits"`
 		Ceilings    ceilings   `json:"ceilings"`
 		Turn        *turn      `json:"turn,omitempty"`
@@ -50,7 +53,17 @@ type (
 		Distance      *float64 `json:"distance_m,omitempty"`
 		FuelFlow      *float64 `json:"fuel_kg_per_h,omitempty"`
 		PowerDrawn    *float64 `json:"power_drawn_w,omitempty"`
+
+		CASInterval       *bounds  `json:"interval_cas_mps,omitempty"`
+		IASInterval       *bounds  `json:"interval_ias_mps,omitempty"`
+		RateInterval      *bounds  `json:"interval_rate_mps,omitempty"`
+		GradientInterval  *bounds  `json:"interval_gradient,omitempty"`
+		RatioInterval     *bounds  `json:"interval_ratio,omitempty"`
+		EnduranceInterval *bounds  `json:"interval_endurance_s,omitempty"`
+		DistanceInterval  *bounds  `json:"interval_distance_m,omitempty"`
+		Share             *float64 `json:"probability,omitempty"` // that the limit applies at all, where that is not sure
 	}
+	bounds   [2]float64
 	ceilings struct {
 		Service  *ceiling `json:"service,omitempty"`
 		Absolute *ceiling `json:"absolute,omitempty"`
@@ -58,6 +71,8 @@ type (
 	ceiling struct {
 		PressureAltitude float64 `json:"pressure_altitude_m"`
 		DensityAltitude  float64 `json:"density_altitude_m"`
+		PressureInterval *bounds `json:"interval_pressure_altitude_m,omitempty"`
+		DensityInterval  *bounds `json:"interval_density_altitude_m,omitempty"`
 	}
 	turn struct {
 		LoadFactor float64 `json:"load_factor"`
@@ -80,16 +95,21 @@ type (
 )
 
 // JSON is the answer as contract.md writes it ("levelspan-limits", version 1), with one final newline. Additions to the
-// contract: "reason" and "shortfall_tas_mps" where there is no level flight, "power_drawn_w" in place of "fuel_kg_per_h" for
+// contract: "basis", "level_flight_probability", intervals beyond the contract's, "reason" and "shortfall_tas_mps" where there is no level flight, "power_drawn_w" in place of "fuel_kg_per_h" for
 // an electric aeroplane, and the allowances for a climb gradient asked for.
 func (r *Report) JSON() []byte {
 	a, w := &r.Answer, &r.Condition.Air
 	d := document{
 		Format: formatName, Version: formatVersion,
 		Air:         air{w.Pressure, w.Temperature, w.Density, w.DensityAltitude},
-		LevelFlight: r.LevelFlight(), Shortfall: a.Shortfall,
+		LevelFlight: r.LevelFlight(), Shortfall: a.Shortfall, Basis: r.Basis,
 		Ceilings: ceilings{ceilingOf(&a.Service), ceilingOf(&a.Absolute)},
 		Limits:   []limit{}, Warnings: []warning{},
+	}
+	if r.Intervals != nil {
+		d.Probability = &r.Intervals.LevelProbability
+		d.Ceilings.Service.add(&r.Intervals.Service)
+		d.Ceilings.Absolute.add(&r.Intervals.Absolute)
 	}
 	if !r.LevelFlight() {
 		d.Reason = a.Outcome.String()
@@ -137,7 +157,43 @@ func (r *Report) limit(k perf.Key) limit {
 			l.FuelFlow = positive(x.FuelFlow * perf.Hour)
 		}
 	}
+	if r.Intervals == nil || Placarded(k) {
+		return l
+	}
+	i := &r.Intervals.Limits[k]
+	l.CASInterval, l.IASInterval = boundsOf(i.CAS), boundsOf(i.IAS)
+	if i.Share < 1 {
+		l.Share = &i.Share
+	}
+	switch k {
+	case perf.FastestClimb:
+		l.RateInterval = boundsOf(i.Rate)
+	case perf.SteepestClimb:
+		l.GradientInterval = boundsOf(i.Gradient)
+	case perf.BestGlide:
+		l.RatioInterval = boundsOf(i.Ratio)
+	case perf.LeastPower:
+		l.EnduranceInterval = boundsOf(i.Endurance)
+	case perf.BestRange:
+		l.DistanceInterval = boundsOf(i.Distance)
+	}
 	return l
+}
+
+// Placarded reports whether a limit is what the papers say, which no run makes surer: it has no interval.
+func Placarded(k perf.Key) bool { return k == perf.NeverExceed || k == perf.Manoeuvring }
+
+func boundsOf(i estimate.Interval) *bounds {
+	if !i.Applies {
+		return nil
+	}
+	return &bounds{i.Low, i.High}
+}
+
+func (c *ceiling) add(i *estimate.CeilingIntervals) {
+	if c != nil {
+		c.PressureInterval, c.DensityInterval = boundsOf(i.PressureAltitude), boundsOf(i.DensityAltitude)
+	}
 }
 
 // positive is x, or nil where 0 stands for there being none.
@@ -152,7 +208,7 @@ func ceilingOf(c *perf.Ceiling) *ceiling {
 	if !c.Applies {
 		return nil
 	}
-	return &ceiling{c.PressureAltitude, c.DensityAltitude}
+	return &ceiling{PressureAltitude: c.PressureAltitude, DensityAltitude: c.DensityAltitude}
 }
 
 func allowanceOf(a *perf.Allowance) (mass, densityAltitude *float64) {

@@ -5,33 +5,78 @@ package report
 import (
 	"math"
 	"sort"
+	"strconv"
 
 	"levelspan/perf"
 	"levelspan/perf/casefile"
 	"levelspan/perf/casefile/figure"
+	"levelspan/perf/estimate"
 )
 
 // Report is one case and its answer. Make it with New.
 type Report struct {
 	Case      *casefile.Case
-	Aeroplane perf.Aeroplane
+	Aeroplane perf.Aeroplane // the estimated one
 	Condition perf.Condition
 	Answer    perf.Answer
+	Intervals *estimate.Intervals // nil: not worked out
+	Basis     string              // what the aeroplane's numbers come from
 	Units     figure.Units
 }
 
-// New solves a case. The error is casefile.Faults; having no level flight is an answer.
+// New solves a case for the aeroplane that its runs and beliefs make likely, with the intervals of every figure. The error is
+// casefile.Faults; having no level flight is an answer.
 func New(c *casefile.Case) (*Report, error) {
 	r := &Report{Case: c, Units: figure.Of(c)}
 	var err error
 	if r.Aeroplane, r.Condition, err = c.Model(); err != nil {
 		return nil, err
 	}
+	e, err := c.Estimate()
+	if err != nil {
+		return nil, err
+	}
+	var fitter estimate.Estimator
+	var p estimate.Posterior
+	if err := fitter.Fit(&e, &p); err != nil {
+		return nil, err
+	}
+	r.Basis = Basis(&p)
+	if p.Converged {
+		p.Aeroplane(&r.Aeroplane)
+		r.Intervals = &estimate.Intervals{}
+		var d estimate.Draws
+		var b estimate.Bands
+		d.Set(&p, estimate.DefaultDraws)
+		if err := b.Solve(&d, &r.Condition, r.Intervals); err != nil {
+			return nil, err
+		}
+	}
 	var s perf.Solver
 	if err := s.Solve(&r.Aeroplane, &r.Condition, &r.Answer); err != nil {
 		return nil, err
 	}
 	return r, nil
+}
+
+// Basis says in a sentence what an estimate's numbers come from.
+func Basis(p *estimate.Posterior) string {
+	if !p.Converged {
+		return "The runs give no estimate (" + p.Stop.String() + "): the figures are those of the numbers as typed, without intervals."
+	}
+	n := 0
+	for i := range p.Runs {
+		if p.Runs[i].Outcome == estimate.Fitted {
+			n++
+		}
+	}
+	switch n {
+	case 0:
+		return "By the numbers as typed, with no runs."
+	case 1:
+		return "By the estimate from 1 run."
+	}
+	return "By the estimate from " + strconv.Itoa(n) + " runs."
 }
 
 var names = [perf.KeyCount]string{

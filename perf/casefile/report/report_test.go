@@ -77,7 +77,7 @@ func decoded(t *testing.T, r *Report) map[string]any {
 func TestJSONHasTheContractsKeys(t *testing.T) {
 	v := decoded(t, solved(t, load(t, "marram")))
 	for where, want := range map[string][]string{
-		"":           {"air", "allowances", "ceilings", "format", "level_flight", "limits", "shortfall_w", "turn", "version", "warnings"},
+		"":           {"air", "allowances", "basis", "ceilings", "format", "level_flight", "level_flight_probability", "limits", "shortfall_w", "turn", "version", "warnings"},
 		"air":        {"density_altitude_m", "density_kg_m3", "pressure_pa", "temperature_k"},
 		"ceilings":   {"absolute", "service"},
 		"turn":       {"bank_deg", "load_factor", "radius_m", "rate_deg_s", "tas_mps"},
@@ -91,11 +91,12 @@ func TestJSONHasTheContractsKeys(t *testing.T) {
 			t.Errorf("%q has %v, want %v", where, got, want)
 		}
 	}
-	if got := keysOf(v["ceilings"].(map[string]any)["service"]); !reflect.DeepEqual(got, []string{"density_altitude_m", "pressure_altitude_m"}) {
+	if got := keysOf(v["ceilings"].(map[string]any)["service"]); !reflect.DeepEqual(got, []string{"density_altitude_m", "interval_density_altitude_m", "interval_pressure_altitude_m", "pressure_altitude_m"}) {
 		t.Errorf("service ceiling: %v", got)
 	}
-	extras := map[string][]string{"fastest_climb": {"rate_mps"}, "steepest_climb": {"gradient"}, "best_glide": {"least_sink_tas_mps", "ratio", "sink_mps"},
-		"least_power": {"endurance_s", "power_required_w"}, "best_range": {"distance_m", "fuel_kg_per_h"}}
+	extras := map[string][]string{"fastest_climb": {"rate_mps", "interval_rate_mps"}, "steepest_climb": {"gradient", "interval_gradient"},
+		"best_glide": {"least_sink_tas_mps", "ratio", "sink_mps", "interval_ratio"}, "least_power": {"endurance_s", "power_required_w", "interval_endurance_s"},
+		"best_range": {"distance_m", "fuel_kg_per_h", "interval_distance_m"}}
 	setBy := map[string]string{"stall": "lift", "slowest_level": "lift", "manoeuvring": "placard", "fastest_level": "power", "never_exceed": "placard"}
 	last := 0.0
 	limits := v["limits"].([]any)
@@ -107,6 +108,13 @@ func TestJSONHasTheContractsKeys(t *testing.T) {
 			want = append(want, "set_by")
 			if l["set_by"] != s {
 				t.Errorf("%s is set by %v, want %s", key, l["set_by"], s)
+			}
+		}
+		if key != "manoeuvring" && key != "never_exceed" { // what a placard says is as sure as the placard
+			want = append(want, "interval_cas_mps", "interval_ias_mps")
+			i := l["interval_cas_mps"].([]any)
+			if low, high := i[0].(float64), i[1].(float64); !(low < l["cas_mps"].(float64) && l["cas_mps"].(float64) < high) {
+				t.Errorf("%s: %v is not inside %v", key, l["cas_mps"], i)
 			}
 		}
 		sort.Strings(want)

@@ -24,6 +24,7 @@ func (r *Report) Text() string {
 	line(name)
 	line(r.loading())
 	line(r.air())
+	line(r.certainty())
 	line()
 	if !r.LevelFlight() {
 		for _, s := range r.Shortfall() {
@@ -31,7 +32,7 @@ func (r *Report) Text() string {
 		}
 		line()
 	}
-	b.WriteString(table(r.rows(), []bool{false, false, true, true, true, false, false}))
+	b.WriteString(table(r.rows(), []bool{false, false, true, true, true, true, false, false}))
 	line()
 	b.WriteString(table(r.facts(), []bool{false, false}))
 	line()
@@ -84,6 +85,19 @@ func (r *Report) Wind() string {
 	return "no wind"
 }
 
+// certainty says what the figures come from, and how likely level flight is where that is not plain.
+func (r *Report) certainty() string {
+	s := r.Basis
+	if r.Intervals == nil {
+		return s
+	}
+	s += " Intervals hold 95 % of the probability."
+	if p := r.Intervals.LevelProbability; p > 0.001 && p < 0.999 {
+		s += " Level flight is possible with a probability of " + figure.Percent(p).String() + "."
+	}
+	return s
+}
+
 func (r *Report) air() string {
 	w, u := &r.Condition.Air, r.Units
 	s := "Density altitude " + u.AltitudeFine(w.DensityAltitude).String() + ", pressure altitude " + u.AltitudeFine(w.PressureAltitude).String() +
@@ -133,21 +147,30 @@ func (r *Report) mass(x *perf.Allowance) string {
 
 func (r *Report) rows() [][]string {
 	u := r.Units
-	rows := [][]string{{"Speed, " + u.Speed.Name, "", "CAS", "IAS", "TAS", "set by", ""}}
+	rows := [][]string{{"Speed, " + u.Speed.Name, "", "CAS", "95 %", "IAS", "TAS", "set by", ""}}
 	for _, k := range Order(&r.Answer) {
 		l := &r.Answer.Limits[k]
-		rows = append(rows, []string{r.Name(k), r.Symbol(k), u.SpeedFine(float64(l.CAS)).Number, u.SpeedFine(float64(l.IAS)).Number,
+		rows = append(rows, []string{r.Name(k), r.Symbol(k), u.SpeedFine(float64(l.CAS)).Number, r.span(k), u.SpeedFine(float64(l.IAS)).Number,
 			u.SpeedFine(float64(l.TAS)).Number, r.SetBy(k), r.Second(k)})
 	}
 	return rows
 }
 
+// span is the interval of a limit's calibrated airspeed; "" where it has none.
+func (r *Report) span(k perf.Key) string {
+	if r.Intervals == nil || Placarded(k) || !r.Intervals.Limits[k].CAS.Applies {
+		return ""
+	}
+	i := &r.Intervals.Limits[k].CAS
+	return r.Units.SpeedFine(i.Low).Number + " to " + r.Units.SpeedFine(i.High).Number
+}
+
 // Second is the figure that goes with a limit, in words; "" where there is none. Speeds in it are of the chosen kind.
 func (r *Report) Second(k perf.Key) string {
 	l, u := &r.Answer.Limits[k], r.Units
-	toEmpty := " on " + u.FuelWhole(r.Condition.Fuel).String() + ", to empty tanks, no reserve"
+	toEmpty := " on " + u.FuelWhole(r.Condition.Fuel).String() + " to empty tanks"
 	if u.Electric {
-		toEmpty = " on " + u.FuelWhole(r.Condition.Fuel).String() + ", to no charge, no reserve"
+		toEmpty = " on " + u.FuelWhole(r.Condition.Fuel).String() + " to no charge"
 	}
 	switch k {
 	case perf.Stall:
