@@ -15,7 +15,7 @@
 // # The model of the errors
 //
 // A parameter that is positive is believed log-normal about the prior's value, with the relative standard deviation of Beliefs; the position
-// error's two are normal. Each reading has the standard deviation of Instruments, independent of the others. A run's residual is
+// error's two and the propeller's drag areas are normal. Each reading has the standard deviation of Instruments, independent of the others. A run's residual is
 // weighed by the spread that its own readings give it through the partial derivatives of the model (the effective variance of J. Orear,
 // Am. J. Phys. 50 (1982) 912, from memory), taken anew with each step of the fit and held while the fit weighs that step.
 //

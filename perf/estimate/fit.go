@@ -60,7 +60,15 @@ type Estimator struct {
 	xMoved    []float64
 	step      []float64
 	row       []float64
+	slope     []float64 // down the misfit
+	full      []float64 // of the posterior: see sandwich
+	inverse   []float64
+	pulls     []float64
+	worths    []worth
+	counted   []float64 // how much of each run counts
 	bound     []bool
+	last      []float64 // the step before
+	stretched bool
 	ls        num.LeastSquares
 	rows      int
 }
@@ -115,7 +123,8 @@ func (e *Estimator) start(c *Case) {
 	e.chol = resize(e.chol, 3*len(c.Runs))
 	e.jac = resize(e.jac, m*n)
 	e.u, e.x, e.uTrial, e.xTrial, e.xMoved = resize(e.u, n), resize(e.x, n), resize(e.uTrial, n), resize(e.xTrial, n), resize(e.xMoved, n)
-	e.step, e.row, e.bound = resize(e.step, n), resize(e.row, n), resize(e.bound, n)
+	e.step, e.row, e.slope, e.bound = resize(e.step, n), resize(e.row, n), resize(e.slope, n), resize(e.bound, n)
+	e.last = resize(e.last, n)
 	clear(e.u)
 	clear(e.bound)
 	e.place(e.u, e.x)
@@ -285,11 +294,12 @@ func (e *Estimator) misfit(s stage, u, z []float64) float64 {
 	return sum
 }
 
-// minimise goes down to the least misfit: Gauss and Newton's step under the weights of the stage, damped after Levenberg and Marquardt
-// where it does not make the misfit less.
+// minimise goes down to the least misfit by Newton's steps, the residuals' own curvature left out (Gauss), damped after Levenberg and Marquardt
+// where a step does not make the misfit less.
 func (e *Estimator) minimise(s stage, tolerance float64) (Stop, int) {
 	lambda := 0.0
 	clear(e.bound)
+	clear(e.last)
 	for n := 1; n <= maximumSteps; n++ {
 		if n <= heldAfter {
 			e.linearise()
@@ -298,8 +308,12 @@ func (e *Estimator) minimise(s stage, tolerance float64) (Stop, int) {
 		}
 		before := e.misfit(s, e.u, e.z)
 		size, better := 0.0, false
-		for range maximumRetry {
+		for try := range maximumRetry {
 			size = e.propose(s, lambda)
+			e.stretched = e.stretched && try == 0
+			if try == 0 && lambda == 0 && size >= tolerance {
+				e.stretch()
+			}
 			if size < tolerance && lambda == 0 {
 				better = true
 				break
@@ -314,10 +328,20 @@ func (e *Estimator) minimise(s stage, tolerance float64) (Stop, int) {
 				better = true
 				break
 			}
+			if try == 0 && e.stretched {
+				continue // once more, as far as the step itself goes
+			}
 			lambda = max(10*lambda, 1e-3)
 		}
 		if !better {
 			return NoProgress, n
+		}
+		for j := range e.u {
+			e.last[j] = e.uTrial[j] - e.u[j]
+		}
+		if e.stretched {
+			clear(e.last)
+			size = max(size, 2*tolerance)
 		}
 		copy(e.u, e.uTrial)
 		copy(e.x, e.xTrial)
@@ -332,6 +356,64 @@ func (e *Estimator) minimise(s stage, tolerance float64) (Stop, int) {
 	return StepLimit, maximumSteps
 }
 
+// pull adds run i to the normal equations of a step: its slope is that of the weight, its curvature that of the loss along the residual and
+// the weight across it.
+func (e *Estimator) pull(s stage, i int) {
+	n := len(e.l.list)
+	k := e.first[i]
+	d2 := e.square(i, e.z)
+	w, c := s.weight(d2), math.Sqrt(s.curvature(d2))
+	if e.runs[i].rows == 1 {
+		row := e.jac[k*n : k*n+n]
+		for j := range n {
+			e.slope[j] -= w * e.z[k] * row[j]
+			e.row[j] = c * row[j]
+		}
+		e.ls.Add(e.row, 0)
+		return
+	}
+	a, b := e.jac[k*n:k*n+n], e.jac[(k+1)*n:(k+2)*n]
+	along, across := 1.0, 0.0
+	if d2 > 0 {
+		along, across = e.z[k]/math.Sqrt(d2), e.z[k+1]/math.Sqrt(d2)
+	}
+	for j := range n {
+		e.slope[j] -= w * (e.z[k]*a[j] + e.z[k+1]*b[j])
+		e.row[j] = c * (along*a[j] + across*b[j])
+	}
+	e.ls.Add(e.row, 0)
+	w = math.Sqrt(w)
+	for j := range n {
+		e.row[j] = w * (along*b[j] - across*a[j])
+	}
+	e.ls.Add(e.row, 0)
+}
+
+// stretch lengthens a step that is a fixed share of the last one in the same direction to where the row of such steps would end (Aitken): the spreads
+// that change from step to step, and the negative curvature of a bad run's loss, which steps leave out, make such rows.
+func (e *Estimator) stretch() {
+	e.stretched = false
+	var dot, last, now float64
+	for j := range e.u {
+		d := e.uTrial[j] - e.u[j]
+		dot += d * e.last[j]
+		last += e.last[j] * e.last[j]
+		now += d * d
+	}
+	if !(last > 0) || !(dot > 0.95*math.Sqrt(last*now)) {
+		return
+	}
+	ratio := dot / last
+	if !(ratio > 0.2 && ratio < 0.98) {
+		return
+	}
+	for j := range e.u {
+		e.uTrial[j] = e.u[j] + (e.uTrial[j]-e.u[j])/(1-ratio)
+	}
+	e.stretched = true
+	e.place(e.uTrial, e.xTrial)
+}
+
 // propose fills the trial with the next step and says how far it goes. An unknown at a bound that the step would cross is held
 // there, and the others step without it.
 func (e *Estimator) propose(s stage, lambda float64) float64 {
@@ -342,7 +424,8 @@ func (e *Estimator) propose(s stage, lambda float64) float64 {
 		for j := range n {
 			clear(e.row)
 			e.row[j] = 1
-			e.ls.Add(e.row, -e.u[j])
+			e.ls.Add(e.row, 0)
+			e.slope[j] = -e.u[j]
 			if lambda > 0 {
 				e.row[j] = math.Sqrt(lambda)
 				e.ls.Add(e.row, 0)
@@ -353,18 +436,11 @@ func (e *Estimator) propose(s stage, lambda float64) float64 {
 			}
 		}
 		for i := range e.runs {
-			if !e.counts(i) {
-				continue
-			}
-			w := math.Sqrt(s.weight(e.square(i, e.z)))
-			for k := e.first[i]; k < e.first[i]+e.runs[i].rows; k++ {
-				for j := range n {
-					e.row[j] = w * e.jac[k*n+j]
-				}
-				e.ls.Add(e.row, -w*e.z[k])
+			if e.counts(i) {
+				e.pull(s, i)
 			}
 		}
-		if !e.ls.Solve(e.step) {
+		if !e.ls.SolveNormal(e.slope, e.step) {
 			clear(e.step)
 		}
 		crossed := false
@@ -374,7 +450,8 @@ func (e *Estimator) propose(s stage, lambda float64) float64 {
 				continue
 			}
 			x := e.x[j] + k.spread*e.step[j]
-			if (e.x[j] <= k.low && x < k.low) || (e.x[j] >= k.high && x > k.high) {
+			edge := 1e-9 * k.spread
+			if (e.x[j] <= k.low+edge && x < k.low) || (e.x[j] >= k.high-edge && x > k.high) {
 				e.bound[j], crossed = true, true
 			}
 		}

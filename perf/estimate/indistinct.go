@@ -28,7 +28,7 @@ func (p *Posterior) indistinct(e *Estimator) []string {
 			continue
 		}
 		any = true
-		h := information(student.weight(e.square(i, e.z)))
+		h := e.counted[i]
 		for k := e.first[i]; k < e.first[i]+e.runs[i].rows; k++ {
 			row := e.jac[k*n : k*n+n]
 			for a := range n {

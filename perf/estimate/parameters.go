@@ -89,7 +89,8 @@ func (k *unknown) sd(x, s float64) float64 {
 // at is x for u, held to the bounds.
 func (k *unknown) at(u float64) float64 { return min(max(k.center+k.spread*u, k.low), k.high) }
 
-// dragAreaBelief is the relative standard deviation of a propeller's drag area before flight.
+// dragAreaBelief is the relative standard deviation of a propeller's drag area before flight. The belief is normal, above 0: the area is so wide a guess
+// that the logarithm, in which no residual is linear, would make the posterior skew.
 const dragAreaBelief = 0.5
 
 // The position error is CAS - IAS = table + offset + slope (IAS - V0), V0 twice the prior's stalling speed at maximum mass, in the first configuration
@@ -157,7 +158,7 @@ func (l *layout) set(c *Case) {
 	}
 	for s := Stopped; s < stateCount; s++ {
 		if seen[s] {
-			l.positive(PropellerDragArea, int(s), area[s], dragAreaBelief, area[s]/100, area[s]*100)
+			l.add(unknown{kind: PropellerDragArea, index: int(s), center: area[s], spread: dragAreaBelief * area[s], low: area[s] / 100, high: area[s] * 100})
 		}
 	}
 	l.reference = referenceSpeed(a)

@@ -2,6 +2,7 @@ package estimate
 
 import (
 	"math"
+	"slices"
 
 	"levelspan/perf"
 )
@@ -36,13 +37,12 @@ type Posterior struct {
 	Stop             Stop
 	Indistinct       []string // what the runs cannot tell apart, or say nothing of
 
-	l      layout
-	own    perf.Aeroplane // the prior as it was
-	instr  Instruments
-	u      []float64
-	x      []float64
-	cov    []float64 // of u
-	proved bool
+	l     layout
+	own   perf.Aeroplane // the prior as it was
+	instr Instruments
+	u     []float64
+	x     []float64
+	cov   []float64 // of u
 }
 
 // fill takes the state of the estimator, linearised at the estimate.
@@ -52,28 +52,15 @@ func (p *Posterior) fill(c *Case, e *Estimator) {
 		u: append(p.u[:0], e.u...), x: append(p.x[:0], e.x...), cov: resize(p.cov, n*n), instr: c.Instruments, own: *c.Prior,
 		l: layout{list: append(p.l.list[:0], e.l.list...), reference: e.l.reference}}
 	p.l.prior = &p.own
-	e.ls.Reset(n)
-	for j := range n {
-		clear(e.row)
-		e.row[j] = 1
-		e.ls.Add(e.row, 0)
-		p.ChiSquare += e.u[j] * e.u[j]
+	for _, u := range e.u {
+		p.ChiSquare += u * u
 	}
 	for i := range e.runs {
-		if !e.counts(i) {
-			continue
-		}
-		d2 := e.square(i, e.z)
-		p.ChiSquare += d2
-		h := math.Sqrt(information(student.weight(d2)))
-		for k := e.first[i]; k < e.first[i]+e.runs[i].rows; k++ {
-			for j := range n {
-				e.row[j] = h * e.jac[k*n+j]
-			}
-			e.ls.Add(e.row, 0)
+		if e.counts(i) {
+			p.ChiSquare += e.square(i, e.z)
 		}
 	}
-	p.proved = e.ls.Covariance(p.cov)
+	e.sandwich(p.cov)
 	for i := range n {
 		for j := range n {
 			p.Correlation[i*n+j] = p.cov[i*n+j] / math.Sqrt(p.cov[i*n+i]*p.cov[j*n+j])
@@ -90,7 +77,114 @@ func (p *Posterior) fill(c *Case, e *Estimator) {
 	for i := range e.runs {
 		p.Runs[i] = p.result(e, i)
 	}
-	p.Indistinct = p.indistinct(e)
+	p.Indistinct = slices.Compact(p.indistinct(e)) // two combinations may be of the same numbers
+}
+
+// sandwich fills cov with the covariance of u, A^-1 B A^-1, and e.full with the inverse of all that prior and runs say, the runs by their weight. The
+// prior counts in each like readings of the unknowns, one each.
+func (e *Estimator) sandwich(cov []float64) {
+	n := len(e.l.list)
+	e.full, e.inverse, e.pulls = resize(e.full, n*n), resize(e.inverse, n*n), resize(e.pulls, n*n)
+	// The leverages first, from the weights alone.
+	e.worths, e.counted = resize(e.worths, len(e.runs)), resize(e.counted, len(e.runs))
+	for i := range e.runs {
+		if e.counts(i) {
+			e.counted[i] = student.weight(e.square(i, e.z))
+		}
+	}
+	e.gather(e.full)
+	for i := range e.runs {
+		if !e.counts(i) {
+			continue
+		}
+		f := &e.runs[i]
+		g := 0.0
+		for k := e.first[i]; k < e.first[i]+f.rows; k++ {
+			g += e.variance(e.jac[k*n:k*n+n], e.full) / float64(f.rows)
+		}
+		e.worths[i] = worthOf(e.counted[i] * g)
+		e.counted[i], _ = e.worths[i].of(e.square(i, e.z))
+	}
+	e.gather(e.inverse)
+	for i := range e.runs {
+		if e.counts(i) {
+			e.counted[i] = e.worths[i].information(e.square(i, e.z))
+		}
+	}
+	e.gather(e.full)
+	clear(e.pulls)
+	for i := range n {
+		e.pulls[i*n+i] = 1
+	}
+	for i := range e.runs {
+		if !e.counts(i) {
+			continue
+		}
+		_, b := e.worths[i].of(e.square(i, e.z))
+		for k := e.first[i]; k < e.first[i]+e.runs[i].rows; k++ {
+			row := e.jac[k*n : k*n+n]
+			for p := range n {
+				for q := range n {
+					e.pulls[p*n+q] += b * row[p] * row[q]
+				}
+			}
+		}
+	}
+	for i := range n {
+		for j := range n {
+			s := 0.0
+			for k := range n {
+				s += e.inverse[i*n+k] * e.pulls[k*n+j]
+			}
+			e.row[j] = s
+		}
+		for j := range n {
+			s := 0.0
+			for k := range n {
+				s += e.row[k] * e.inverse[k*n+j]
+			}
+			cov[i*n+j] = s
+		}
+	}
+}
+
+// variance is row C row', and leaves C row' in e.row.
+func (e *Estimator) variance(row, c []float64) float64 {
+	n := len(row)
+	g := 0.0
+	for a := range n {
+		s := 0.0
+		for b := range n {
+			s += c[a*n+b] * row[b]
+		}
+		e.row[a] = s
+		g += row[a] * s
+	}
+	return g
+}
+
+// gather fills c with the inverse of the prior's information and the runs', each run as often as e.counted says.
+func (e *Estimator) gather(c []float64) {
+	n := len(e.l.list)
+	e.ls.Reset(n)
+	for j := range n {
+		clear(e.row)
+		e.row[j] = 1
+		e.ls.Add(e.row, 0)
+	}
+	for i := range e.runs {
+		if !e.counts(i) {
+			continue
+		}
+		h := math.Sqrt(e.counted[i])
+		for k := e.first[i]; k < e.first[i]+e.runs[i].rows; k++ {
+			for j := range n {
+				e.row[j] = h * e.jac[k*n+j]
+			}
+			e.ls.Add(e.row, 0)
+		}
+	}
+	e.ls.Covariance(c)
 }
 
 // result says what the estimate makes of run i. With g the variance that the unknowns give the foretelling, in units of the run's own, and h
@@ -104,13 +198,16 @@ func (p *Posterior) result(e *Estimator, i int) RunResult {
 	k := e.first[i]
 	l := e.chol[3*i : 3*i+3]
 	q := RunResult{Residual: e.r[k], SD: l[0], Standardised: e.r[k] / l[0]}
+	if f.run.Kind == Stall {
+		q.Residual, q.SD = f.lift(&e.base, e.r[k], l[0])
+	}
 	if f.rows == 2 {
 		q.HasRPM, q.RPMResidual, q.RPMSD = true, e.r[k+1], math.Hypot(l[1], l[2])
 	}
 	w, h := 0.0, 0.0
 	if e.counts(i) {
 		w = student.weight(e.square(i, e.z))
-		h = information(w)
+		h = e.counted[i]
 	} else {
 		q.Outcome = WasLeftOut
 	}
@@ -118,15 +215,7 @@ func (p *Posterior) result(e *Estimator, i int) RunResult {
 	clear(e.step)
 	for m := k; m < k+f.rows; m++ {
 		row := e.jac[m*n : m*n+n]
-		g := 0.0
-		for a := range n {
-			s := 0.0
-			for b := range n {
-				s += p.cov[a*n+b] * row[b]
-			}
-			e.row[a] = s
-			g += row[a] * s
-		}
+		g := e.variance(row, e.full)
 		z := e.z[m]
 		without := z / max(1-w*g, 1e-9)
 		variance := (1 - h*g + g) / max(1-h*g, 1e-9)
@@ -138,7 +227,7 @@ func (p *Posterior) result(e *Estimator, i int) RunResult {
 		}
 	}
 	for a := range n {
-		q.Pull = max(q.Pull, math.Abs(e.step[a])/math.Sqrt(p.cov[a*n+a]))
+		q.Pull = max(q.Pull, math.Abs(e.step[a])/math.Sqrt(e.full[a*n+a]))
 	}
 	return q
 }

@@ -59,7 +59,8 @@ func (f *flown) prepare(r *Run, a *perf.Aeroplane, s *Instruments) {
 //
 //	level, climb, glide  rate times the climb factor, less the specific excess power, m/s
 //	                     second row: rpm less the one that the setting gives, rev/s
-//	stall                lift coefficient less cl_max
+//	stall                calibrated airspeed at which the model stalls less that read, m/s: the error of the reading itself, so that a low reading
+//	                     weighs no more than a high one; reported as a lift coefficient
 //	gps-legs             calibrated airspeed of the legs' true airspeed less that of the IAS, m/s
 type readings struct {
 	ias, mass, setting, revolutions, rate, tas float64
@@ -82,8 +83,7 @@ func (f *flown) residual(c *craft, e *perf.Evaluator, d *readings) (r [2]float64
 	v := d.air.TASFromCAS(perf.CAS(cas))
 	s := perf.State{TAS: v, Air: *d.air, Mass: d.mass, Configuration: g}
 	if f.run.Kind == Stall {
-		s.TAS = max(v, 1)
-		r[0] = c.a.LiftCoefficient(&s) - c.a.Configurations[g].MaximumLift
+		r[0] = float64(d.air.CASFromTAS(e.StallSpeed(&c.a, &s))) - cas
 		return r
 	}
 	if f.run.Kind == Glide {
@@ -114,18 +114,8 @@ func (f *flown) spread(c *craft, e *perf.Evaluator, s *Instruments) (v [3]float6
 		v[1] += b * b
 		v[2] += a * b
 	}
-	middle, half := d.ias, 0.5*s.IAS
-	if r.Kind == Stall {
-		// Over the stretch from the speed read to the one that the model says: the residual over that slope is the error of the reading
-		// itself, so that a low reading does not weigh less than a high one.
-		st := perf.State{Air: r.Air, Mass: r.Mass, Configuration: r.Configuration}
-		model := float64(r.Air.CASFromTAS(e.StallSpeed(&c.a, &st)))
-		off := model - c.cas(r.Configuration, d.ias)
-		middle += 0.5 * off
-		half = max(half, 0.5*math.Abs(off))
-	}
 	low, high := d, d
-	low.ias, high.ias = max(middle-half, 1e-3), middle+half
+	low.ias, high.ias = max(d.ias-0.5*s.IAS, 1e-3), d.ias+0.5*s.IAS
 	add(f.residual(c, e, &low), f.residual(c, e, &high), high.ias-low.ias, s.IAS)
 	low, high = d, d
 	low.air, high.air = &f.cold, &f.warm
@@ -183,4 +173,18 @@ func (f *flown) knows(k *unknown) bool {
 		return k.kind <= OswaldEfficiency || k.kind == PropellerDragArea && k.index == int(r.Propeller)
 	}
 	return k.kind != PropellerDragArea && !(k.kind == PowerScale && f.byRevolutions)
+}
+
+// lift is a stall's residual as a lift coefficient, that flown less cl_max, with its standard deviation: that of the speed by the slope between the
+// speed read and the model's.
+func (f *flown) lift(c *craft, residual, sd float64) (cl, clSD float64) {
+	r := f.run
+	cas := c.cas(r.Configuration, float64(r.IAS))
+	s := perf.State{Air: r.Air, Mass: r.Mass, Configuration: r.Configuration, TAS: r.Air.TASFromCAS(perf.CAS(cas))}
+	flown := c.a.LiftCoefficient(&s)
+	cl = flown - c.a.Configurations[r.Configuration].MaximumLift
+	if math.Abs(residual) > 1e-6*sd {
+		return cl, cl / residual * sd
+	}
+	return cl, 2 * flown / max(cas, 1) * sd
 }

@@ -75,7 +75,11 @@ func drawTruth(r *rand.Rand, c *Case) truth {
 		}
 		stopped, windmilling, feathered := c.Prior.PropellerDragArea()
 		for s, m := range map[PropellerState]float64{Stopped: stopped, Windmilling: windmilling, Feathered: feathered} {
-			t.area[s] = put("propeller_drag_area_m2."+s.String(), logNormal(r, m, 0.5))
+			x := 0.0
+			for x < m/100 {
+				x = m * (1 + 0.5*r.NormFloat64())
+			}
+			t.area[s] = put("propeller_drag_area_m2."+s.String(), x)
 		}
 		offset := put("position_offset_mps", b.PositionError*r.NormFloat64())
 		v0 := 2 * math.Sqrt(2*a.MaximumMass*perf.StandardGravity/(1.225*a.WingArea*c.Prior.Configurations[0].MaximumLift))

@@ -94,6 +94,30 @@ func (l *LeastSquares) Solve(x []float64) bool {
 	return true
 }
 
+// SolveNormal fills x with the solution of A'A x = g: the step of a search whose slope is not that of the rows. It reports false where Solve
+// does. x may be g.
+func (l *LeastSquares) SolveNormal(g, x []float64) bool {
+	n := l.n
+	if !l.determined() || len(x) < n || len(g) < n {
+		return false
+	}
+	for i := range n { // R' w = g
+		s := g[i]
+		for j := range i {
+			s -= l.r[j*n+i] * x[j]
+		}
+		x[i] = s / l.r[i*n+i]
+	}
+	for i := n - 1; i >= 0; i-- { // R x = w
+		s := x[i]
+		for j := i + 1; j < n; j++ {
+			s -= l.r[i*n+j] * x[j]
+		}
+		x[i] = s / l.r[i*n+i]
+	}
+	return true
+}
+
 // determined reports whether each diagonal element stands out of the rounding of its own column.
 func (l *LeastSquares) determined() bool {
 	n := l.n
