@@ -71,6 +71,13 @@ type Estimator struct {
 	stretched bool
 	ls        num.LeastSquares
 	rows      int
+
+	// Of row.go.
+	single [1]Run
+	solver perf.Solver
+	answer perf.Answer
+	store  []perf.Configuration
+	points []perf.PositionErrorPoint
 }
 
 // Fit fills dst with the posterior of the case. The error is that of Validate; a run that cannot be used is an Outcome of its own in
@@ -105,6 +112,11 @@ func (e *Estimator) Fit(c *Case, dst *Posterior) error {
 // start readies everything for the unknowns at the prior.
 func (e *Estimator) start(c *Case) {
 	e.l.set(c)
+	e.begin(c)
+}
+
+// begin is start with the unknowns listed.
+func (e *Estimator) begin(c *Case) {
 	e.instr = c.Instruments
 	n := len(e.l.list)
 	e.base.start(&e.l)
@@ -310,7 +322,7 @@ func (e *Estimator) minimise(s stage, tolerance float64) (Stop, int) {
 		size, better := 0.0, false
 		for try := range maximumRetry {
 			size = e.propose(s, lambda)
-			e.stretched = e.stretched && try == 0
+			e.stretched = false
 			if try == 0 && lambda == 0 && size >= tolerance {
 				e.stretch()
 			}

@@ -2,7 +2,6 @@ package estimate
 
 import (
 	"math"
-	"slices"
 
 	"levelspan/perf"
 )
@@ -77,7 +76,7 @@ func (p *Posterior) fill(c *Case, e *Estimator) {
 	for i := range e.runs {
 		p.Runs[i] = p.result(e, i)
 	}
-	p.Indistinct = slices.Compact(p.indistinct(e)) // two combinations may be of the same numbers
+	p.Indistinct = p.indistinct(e)
 }
 
 // sandwich fills cov with the covariance of u, A^-1 B A^-1, and e.full with the inverse of all that prior and runs say, the runs by their weight. The
