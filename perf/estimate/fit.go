@@ -174,6 +174,8 @@ func (e *Estimator) residuals(c *craft, x, r []float64) {
 			continue
 		}
 		d := f.readings()
+		d.v = f.run.Air.TASFromCAS(perf.CAS(c.cas(f.run.Configuration, d.ias)))
+		f.v = d.v
 		v := f.residual(c, &e.ev, &d)
 		k := e.first[i]
 		r[k] = v[0]
@@ -250,6 +252,9 @@ func (e *Estimator) jacobian() {
 					continue
 				}
 				d := f.readings()
+				if k.kind != PositionOffset && k.kind != PositionSlope {
+					d.v = f.v
+				}
 				v := f.residual(&e.moved, &e.ev, &d)
 				r[e.first[i]] = v[0]
 				if f.rows == 2 {

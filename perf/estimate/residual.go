@@ -13,9 +13,10 @@ type flown struct {
 	rows    int // of residuals: 2 where a setting and an rpm are read
 	// The air with the temperature and the pressure altitude off by about half a standard deviation either way.
 	warm, cold, above, below perf.Air
-	warmth, height           float64 // warm less cold, K; above less below, m
-	tas, tasSD               float64 // of GPS legs
-	byRevolutions            bool    // the thrust is that of the rpm read
+	warmth, height           float64  // warm less cold, K; above less below, m
+	tas, tasSD               float64  // of GPS legs
+	byRevolutions            bool     // the thrust is that of the rpm read
+	v                        perf.TAS // true airspeed of the reading with the present position error
 }
 
 // prepare readies a run. A run that cannot be used keeps why in its outcome.
@@ -65,11 +66,12 @@ func (f *flown) prepare(r *Run, a *perf.Aeroplane, s *Instruments) {
 type readings struct {
 	ias, mass, setting, revolutions, rate, tas float64
 	air                                        *perf.Air
+	v                                          perf.TAS // of ias in air where it is known already; 0: not
 }
 
 func (f *flown) readings() readings {
 	r := f.run
-	return readings{float64(r.IAS), r.Mass, r.Setting, r.RevolutionRate, r.Rate, f.tas, &r.Air}
+	return readings{float64(r.IAS), r.Mass, r.Setting, r.RevolutionRate, r.Rate, f.tas, &r.Air, 0}
 }
 
 // residual is that of readings d of run f with the numbers c.
@@ -80,12 +82,16 @@ func (f *flown) residual(c *craft, e *perf.Evaluator, d *readings) (r [2]float64
 		r[0] = float64(d.air.CASFromTAS(perf.TAS(d.tas))) - cas
 		return r
 	}
-	v := d.air.TASFromCAS(perf.CAS(cas))
-	s := perf.State{TAS: v, Air: *d.air, Mass: d.mass, Configuration: g}
+	s := perf.State{Air: *d.air, Mass: d.mass, Configuration: g}
 	if f.run.Kind == Stall {
 		r[0] = float64(d.air.CASFromTAS(e.StallSpeed(&c.a, &s))) - cas
 		return r
 	}
+	v := d.v
+	if v == 0 {
+		v = d.air.TASFromCAS(perf.CAS(cas))
+	}
+	s.TAS = v
 	if f.run.Kind == Glide {
 		s.PowerOff, s.DragArea = true, c.area[f.run.Propeller]
 	} else if f.byRevolutions {
@@ -128,13 +134,15 @@ func (f *flown) spread(c *craft, e *perf.Evaluator, s *Instruments) (v [3]float6
 		add(f.residual(c, e, &low), f.residual(c, e, &high), f.tasSD, f.tasSD)
 		return v
 	}
+	d.v = d.air.TASFromCAS(perf.CAS(c.cas(r.Configuration, d.ias)))
+	f.v = d.v
 	low, high = d, d
 	low.mass, high.mass = d.mass*(1-0.5*s.Mass), d.mass*(1+0.5*s.Mass)
 	add(f.residual(c, e, &low), f.residual(c, e, &high), high.mass-low.mass, s.Mass*d.mass)
 	if r.Kind == Stall {
 		return v
 	}
-	rate := s.Rate * d.air.ClimbFactor(d.air.TASFromCAS(perf.CAS(c.cas(r.Configuration, d.ias))))
+	rate := s.Rate * d.air.ClimbFactor(d.v)
 	v[0] += rate * rate
 	if r.Kind == Glide {
 		return v

@@ -74,7 +74,8 @@ func drawTruth(r *rand.Rand, c *Case) truth {
 			p.PowerCoefficientSlope = put("power_coefficient_slope", logNormal(r, p.PowerCoefficientSlope, b.Propeller))
 		}
 		stopped, windmilling, feathered := c.Prior.PropellerDragArea()
-		for s, m := range map[PropellerState]float64{Stopped: stopped, Windmilling: windmilling, Feathered: feathered} {
+		for i, m := range []float64{stopped, windmilling, feathered} {
+			s := Stopped + PropellerState(i)
 			x := 0.0
 			for x < m/100 {
 				x = m * (1 + 0.5*r.NormFloat64())
