@@ -4,20 +4,9 @@ import "levelspan/perf/casefile/report"
 
 // fit prints the estimate from the case's runs. A fit that does not converge is no answer.
 func (c *console) fit(args []string) int {
-	a, problem := parse(args, true)
-	path := ""
-	if problem == "" {
-		path, problem = a.one("CASE.json")
-	}
-	if problem == "" && a.set {
-		problem = "no such flag: \"--gradient\""
-	}
-	if problem != "" {
-		return c.misused("fit: " + problem)
-	}
-	k, where, err := c.load(path)
-	if err != nil {
-		return c.fail(where, err)
+	a, k, where, code := c.caseOf("fit", args, "--json")
+	if code != done {
+		return code
 	}
 	f, err := report.NewFit(k)
 	if err != nil {

@@ -6,6 +6,7 @@ import (
 	"io"
 	"os"
 	"runtime/debug"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -109,8 +110,11 @@ type arguments struct {
 	set      bool // gradient
 }
 
-// parse takes flags before or after the operands; "--" ends the flags, and "-" is an operand.
-func parse(args []string, limits bool) (a arguments, problem string) {
+// parse takes the flags that a command has, before or after the operands; "--" ends the flags, and "-" is an operand.
+func parse(args []string, flags ...string) (a arguments, problem string) {
+	has := func(name, flag string) bool {
+		return slices.Contains(flags, flag) && (name == flag || name == flag[1:])
+	}
 	for i := 0; i < len(args); i++ {
 		s := args[i]
 		name, value, joined := strings.Cut(s, "=")
@@ -120,9 +124,9 @@ func parse(args []string, limits bool) (a arguments, problem string) {
 			return a, ""
 		case s == "-" || !strings.HasPrefix(s, "-"):
 			a.operands = append(a.operands, s)
-		case limits && (s == "--json" || s == "-json"):
+		case has(s, "--json"):
 			a.json = true
-		case limits && (name == "--gradient" || name == "-gradient"):
+		case has(name, "--gradient"):
 			if !joined {
 				i++
 				if i == len(args) {
@@ -185,18 +189,27 @@ func (c *console) warn(where string, warnings []casefile.Warning) {
 	}
 }
 
-func (c *console) limits(args []string) int {
-	a, problem := parse(args, true)
+// caseOf reads the one case that a command is for, and its flags; a code other than done has been explained.
+func (c *console) caseOf(command string, args []string, flags ...string) (a arguments, k *casefile.Case, where string, code int) {
+	a, problem := parse(args, flags...)
 	path := ""
 	if problem == "" {
 		path, problem = a.one("CASE.json")
 	}
 	if problem != "" {
-		return c.misused("limits: " + problem)
+		return a, nil, "", c.misused(command + ": " + problem)
 	}
 	k, where, err := c.load(path)
 	if err != nil {
-		return c.fail(where, err)
+		return a, nil, where, c.fail(where, err)
+	}
+	return a, k, where, done
+}
+
+func (c *console) limits(args []string) int {
+	a, k, where, code := c.caseOf("limits", args, "--json", "--gradient")
+	if code != done {
+		return code
 	}
 	if a.set {
 		g, err := strconv.ParseFloat(a.gradient, 64)
@@ -225,17 +238,9 @@ func (c *console) limits(args []string) int {
 }
 
 func (c *console) link(args []string) int {
-	a, problem := parse(args, false)
-	path := ""
-	if problem == "" {
-		path, problem = a.one("CASE.json")
-	}
-	if problem != "" {
-		return c.misused("link: " + problem)
-	}
-	k, where, err := c.load(path)
-	if err != nil {
-		return c.fail(where, err)
+	_, k, where, code := c.caseOf("link", args)
+	if code != done {
+		return code
 	}
 	s := k.Fragment()
 	if s == "" {
@@ -245,7 +250,7 @@ func (c *console) link(args []string) int {
 }
 
 func (c *console) open(args []string) int {
-	a, problem := parse(args, false)
+	a, problem := parse(args)
 	link := ""
 	if problem == "" {
 		link, problem = a.one("FRAGMENT")

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"math"
 	"strings"
 
 	"levelspan/perf"
@@ -16,6 +17,7 @@ type limitRow struct {
 	setBy  string // in a word, "" where nothing but the aeroplane's own curves does
 	value  string // whole units of the chosen kind
 	span   string // 95 % interval of the value, "" none
+	within string // the same short: no farther than that from the value
 	second string
 	aside  string // beside the name: the wind of best range
 }
@@ -39,6 +41,8 @@ func (a *App) limitRows() []limitRow {
 		row.second, row.aside = a.secondFigure(k, l)
 		if i, ok := a.solved.estimated.interval(k, kind); ok {
 			row.span = a.units.SpeedWhole(i.lo).Number + "–" + a.units.SpeedWhole(i.hi).Number
+			v, unit := inKind(l, kind)/a.units.Speed.SI, a.units.Speed.SI
+			row.within = "±" + figure.Number(math.Max(math.Round(i.hi/unit)-math.Round(v), math.Round(v)-math.Round(i.lo/unit)), 0)
 		}
 		a.rows = append(a.rows, row)
 	}

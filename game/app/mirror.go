@@ -24,8 +24,16 @@ func (a *App) describe() {
 	m.Facts = a.facts()
 }
 
-// summary is the day in one sentence.
+// summary is the day in one sentence, and what its figures come from in another.
 func (a *App) summary() string {
+	if a.solved.fault != "" || a.solved.estimated.basis == "" {
+		return a.day()
+	}
+	return a.day() + " " + a.solved.estimated.basis
+}
+
+// day is the day in one sentence.
+func (a *App) day() string {
 	if a.solved.fault != "" {
 		return "No figures for this case: " + a.solved.fault
 	}
@@ -40,7 +48,12 @@ func (a *App) summary() string {
 		}
 		return s
 	}
-	kind := a.speedKind()
-	return "Level flight from " + u.SpeedWhole(inKind(slow, kind)).Number + " (" + a.report.SetBy(perf.SlowestLevel) + ") to " +
-		u.SpeedWhole(inKind(fast, kind)).String() + " " + kind + " (" + a.report.SetBy(perf.FastestLevel) + ")" + where + " " + a.solved.estimated.basis
+	return a.ends() + where
+}
+
+// ends are the two ends of level flight, where there is any, and what sets them.
+func (a *App) ends() string {
+	l, kind := &a.solved.answer.Limits, a.speedKind()
+	return "Level flight from " + a.units.SpeedWhole(inKind(&l[perf.SlowestLevel], kind)).Number + " (" + a.report.SetBy(perf.SlowestLevel) + ") to " +
+		a.units.SpeedWhole(inKind(&l[perf.FastestLevel], kind)).String() + " " + kind + " (" + a.report.SetBy(perf.FastestLevel) + ")"
 }

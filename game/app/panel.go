@@ -177,13 +177,23 @@ func (a *App) drawLimitText(f *ui.Frame, r, touch scene.Rect, row *limitRow, sel
 	}
 	f.Label(style, scene.Rect{X: words.X, Y: base - 14, W: words.W, H: 16}, scene.Left, row.name, ink)
 	line := scene.Rect{X: words.X, Y: math.Round(r.Y+0.79*r.H) - 9, W: words.W, H: 14}
-	if row.span != "" { // how sure the value is stands first; what does not fit beside it is left out
-		f.Label(scene.SmallBold, line, scene.Left, row.span, t.Muted)
-		w := scene.Measure(scene.SmallBold, row.span) + 8
-		line.X += w
-		line.W -= w
+	// How sure the value is stands first, shorter where that leaves room for the rest.
+	text, room := fitting(row.second, inline, line.W), line.W
+	span := row.span
+	for _, form := range [...]string{row.span, row.within} {
+		if form == "" {
+			break
+		}
+		span, room = form, line.W-scene.Measure(scene.SmallBold, form)-8
+		if text = fitting(row.second, inline, room); scene.Measure(scene.Small, text) <= room {
+			break
+		}
 	}
-	if text := fitting(row.second, inline, line.W); scene.Measure(scene.Small, text) <= line.W || row.span == "" {
+	if span != "" {
+		f.Label(scene.SmallBold, line, scene.Left, span, t.Muted)
+		line.X, line.W = line.X+line.W-room, room
+	}
+	if span == "" || scene.Measure(scene.Small, text) <= room {
 		f.Label(scene.Small, line, scene.Left, text, t.Muted)
 	}
 }

@@ -53,13 +53,18 @@ func (a *App) drawStrip(f *ui.Frame) {
 	in := ui.Trim(r, 0, a.layout.margin, 0, a.layout.margin)
 	if len(texts) == 0 {
 		f.Scene.FillRect(a.toEdges(r), 0, t.Bar)
-		h := f.ParagraphHeight(scene.Body, in.W, a.mirror.Summary)
-		if h > r.H-8 {
-			h = f.ParagraphHeight(scene.Small, in.W, a.mirror.Summary)
-			f.Paragraph(scene.Small, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, a.mirror.Summary, t.Ink)
-			return
+		text, style := a.mirror.Summary, scene.Body
+		for _, shorter := range [...]struct {
+			text  string
+			style scene.Style
+		}{{text, scene.Small}, {a.day(), scene.Small}, {a.ends() + ".", scene.Small}} {
+			if f.ParagraphHeight(style, in.W, text) <= r.H-8 {
+				break
+			}
+			text, style = shorter.text, shorter.style
 		}
-		f.Paragraph(scene.Body, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, a.mirror.Summary, t.Ink)
+		h := f.ParagraphHeight(style, in.W, text)
+		f.Paragraph(style, scene.Rect{X: in.X, Y: r.Y + (r.H-h)/2, W: in.W, H: h}, text, t.Ink)
 		return
 	}
 	f.Scene.FillRect(a.toEdges(r), 0, t.CautionBack)

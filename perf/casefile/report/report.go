@@ -32,22 +32,18 @@ func New(c *casefile.Case) (*Report, error) {
 	if r.Aeroplane, r.Condition, err = c.Model(); err != nil {
 		return nil, err
 	}
-	e, err := c.Estimate()
+	f, err := NewFit(c)
 	if err != nil {
 		return nil, err
 	}
-	var fitter estimate.Estimator
-	var p estimate.Posterior
-	if err := fitter.Fit(&e, &p); err != nil {
-		return nil, err
-	}
-	r.Basis = Basis(&p)
+	p := &f.Posterior
+	r.Basis = Basis(p)
 	if p.Converged {
 		p.Aeroplane(&r.Aeroplane)
 		r.Intervals = &estimate.Intervals{}
 		var d estimate.Draws
 		var b estimate.Bands
-		d.Set(&p, estimate.DefaultDraws)
+		d.Set(p, estimate.DefaultDraws)
 		if err := b.Solve(&d, &r.Condition, r.Intervals); err != nil {
 			return nil, err
 		}
