@@ -12,6 +12,8 @@ import (
 	"io"
 	"net"
 	"net/http"
+	"os"
+	"path/filepath"
 	"regexp"
 	"sync"
 	"testing"
@@ -136,10 +138,26 @@ type biDi struct {
 	said    []string // errors on the page's console
 }
 
+// preferences of the profile: the browser asks nothing of its maker's servers.
+const preferences = `user_pref("app.normandy.enabled", false);
+user_pref("browser.backup.enabled", false);
+user_pref("browser.safebrowsing.update.enabled", false);
+user_pref("datareporting.healthreport.uploadEnabled", false);
+user_pref("extensions.update.enabled", false);
+user_pref("network.captive-portal-service.enabled", false);
+user_pref("network.connectivity-service.enabled", false);
+user_pref("services.settings.server", "data:,");
+`
+
 // newBiDi starts Firefox with a profile of its own and opens a session.
 func newBiDi(t *testing.T, path string) *biDi {
 	t.Helper()
-	said := start(t, []string{"MOZ_HEADLESS=1"}, path, "--headless", "--no-remote", "--remote-debugging-port", "0", "--profile", t.TempDir())
+	profile := t.TempDir()
+	if err := os.WriteFile(filepath.Join(profile, "user.js"), []byte(preferences), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	// Begun with an empty page, the browser leaves the focus in its address bar, and no element hears of its own.
+	said := start(t, []string{"MOZ_HEADLESS=1"}, path, "--headless", "--no-remote", "--remote-debugging-port", "0", "--profile", profile, "data:text/html,<title>levelspan</title>")
 	listens := regexp.MustCompile(`WebDriver BiDi listening on ws://([0-9.:a-z]+)`)
 	d := &biDi{waiting: map[int]chan json.RawMessage{}}
 	for end := time.Now().Add(60 * time.Second); ; time.Sleep(50 * time.Millisecond) {
@@ -289,6 +307,17 @@ func (d *biDi) picture() ([]byte, error) {
 		return nil, err
 	}
 	return base64.StdEncoding.DecodeString(r.Data)
+}
+
+func (d *biDi) reload() error {
+	return d.call("browsingContext.reload", map[string]any{"context": d.context, "wait": "complete"}, nil)
+}
+
+func (d *biDi) console() (said []string, err error) {
+	d.mu.Lock()
+	defer d.mu.Unlock()
+	said, d.said = d.said, nil
+	return said, nil
 }
 
 func (d *biDi) close() { d.socket.conn.Close() }

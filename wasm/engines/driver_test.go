@@ -26,6 +26,9 @@ type browser interface {
 	act(sources []any) error
 	size(width, height int) error
 	picture() ([]byte, error)
+	reload() error
+	// console gives the errors on the browser's console that it has not given yet, where the browser tells them.
+	console() ([]string, error)
 	close()
 }
 
@@ -138,6 +141,7 @@ func display(t *testing.T) string {
 type webDriver struct {
 	server, session string
 	extra           [2]int // what the window has around the page
+	logs            bool   // the server tells what is on the console
 }
 
 // call sends one command; into takes the value.
@@ -228,7 +232,6 @@ func (d *webDriver) size(width, height int) error {
 			if w == width && h == height {
 				return nil
 			}
-			d.extra[0], d.extra[1] = d.extra[0]+0, d.extra[1]+0
 			time.Sleep(50 * time.Millisecond)
 		}
 		text, err := d.eval("innerWidth + ' ' + innerHeight")
@@ -240,7 +243,7 @@ func (d *webDriver) size(width, height int) error {
 		d.extra[0] += width - w
 		d.extra[1] += height - h
 	}
-	return nil // a window manager's least width: the page is looked at as it is
+	return fmt.Errorf("the window does not take the size %d x %d", width, height)
 }
 
 func (d *webDriver) picture() (data []byte, err error) {
@@ -249,6 +252,27 @@ func (d *webDriver) picture() (data []byte, err error) {
 		return nil, err
 	}
 	return base64.StdEncoding.DecodeString(text)
+}
+
+func (d *webDriver) reload() error {
+	return d.call("POST", d.session+"/refresh", map[string]any{}, nil)
+}
+
+// console asks by the command that Chromium's driver adds to the standard.
+func (d *webDriver) console() (said []string, err error) {
+	if !d.logs {
+		return nil, nil
+	}
+	var entries []struct{ Level, Message string }
+	if err := d.call("POST", d.session+"/se/log", map[string]any{"type": "browser"}, &entries); err != nil {
+		return nil, err
+	}
+	for _, e := range entries {
+		if e.Level == "SEVERE" {
+			said = append(said, e.Message)
+		}
+	}
+	return said, nil
 }
 
 func (d *webDriver) close() {
