@@ -7,17 +7,33 @@ import (
 
 	"levelspan/game/ui"
 	"levelspan/perf"
+	"levelspan/perf/casefile"
 	"levelspan/perf/casefile/report"
 )
+
+// solvedApart is a case's estimated aeroplane, its day and their answer, made apart from the program and without intervals.
+func solvedApart(t testing.TB, c *casefile.Case) (aero perf.Aeroplane, cond perf.Condition, answer perf.Answer) {
+	t.Helper()
+	_, cond, err := c.Model()
+	if err != nil {
+		t.Fatal(err)
+	}
+	f, err := report.NewFit(c)
+	if err != nil {
+		t.Fatal(err)
+	}
+	f.Posterior.Aeroplane(&aero)
+	var solver perf.Solver
+	if err := solver.Solve(&aero, &cond, &answer); err != nil {
+		t.Fatal(err)
+	}
+	return aero, cond, answer
+}
 
 // sameAsSolve compares the mirror with a solve of the same case made directly.
 func (p *pilot) sameAsSolve() {
 	p.t.Helper()
-	r, err := report.New(p.app.Case())
-	if err != nil {
-		p.t.Fatal(err)
-	}
-	want := r.Answer
+	_, _, want := solvedApart(p.t, p.app.Case())
 	got := map[string]MirrorRow{}
 	for _, r := range p.app.Mirror().Rows {
 		got[r.Key] = r
@@ -490,14 +506,11 @@ func TestStallInBankIsTheStallOfThatBank(t *testing.T) {
 		if bank > 44 {
 			at = 60
 		}
-		answer, err := report.New(c)
-		if err != nil {
-			t.Fatal(err)
-		}
-		answer.Condition.Bank = at * perf.Degree
+		aero, cond, _ := solvedApart(t, c)
+		cond.Bank = at * perf.Degree
 		var solver perf.Solver
 		var want perf.Answer
-		if err := solver.Solve(&answer.Aeroplane, &answer.Condition, &want); err != nil {
+		if err := solver.Solve(&aero, &cond, &want); err != nil {
 			t.Fatal(err)
 		}
 		got := float64(want.Limits[perf.Stall].CAS)
