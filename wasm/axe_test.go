@@ -177,6 +177,30 @@ func TestAnnouncements(t *testing.T) {
 	}
 }
 
+// TestAnnouncementWaitsForTheHand changes a figure and then holds a finger still on a handle, which changes nothing that is
+// drawn: what there is to say waits all the same.
+func TestAnnouncementWaitsForTheHand(t *testing.T) {
+	b := newTab(t, 1280, 800, 1, false)
+	b.open(singleFile(t) + "?surface=software")
+	after := eval[float64](b, `new Promise(done => {
+		const region = document.getElementById('levelspan-warnings'), layer = document.getElementById('levelspan-layer');
+		const box = document.querySelector('[data-handle=mass]').getBoundingClientRect(), x = box.x + box.width / 2, y = box.y + box.height / 2;
+		const send = kind => layer.dispatchEvent(new PointerEvent(kind, {bubbles: true, pointerId: 7, pointerType: 'touch', clientX: x, clientY: y, button: 0, buttons: 1}));
+		let last = 0, held = 0;
+		const start = () => {
+			new MutationObserver(() => done(performance.now() - last)).observe(region, {childList: true, characterData: true, subtree: true});
+			levelspan.push(levelspan.VALUE, {id: 'handle/mass', value: 830}); // above the maximum: a caution
+			send('pointerdown');
+			const hold = setInterval(() => { last = performance.now(); send('pointermove'); if (++held === 15) { clearInterval(hold); send('pointerup'); } }, 100);
+		};
+		setTimeout(start, 1500); // what the page said at its start has been said
+		setTimeout(() => done(-1), 9000);
+	})`, awaitPromise)
+	if after < 490 {
+		t.Errorf("read out %.0f ms after the last touch; -1: never", after)
+	}
+}
+
 // TestKeysOfTheBrowser leaves the browser's own keys to it, and lets Tab walk through the page and out of it.
 func TestKeysOfTheBrowser(t *testing.T) {
 	b := newTab(t, 1280, 800, 1, false)

@@ -88,6 +88,7 @@
       e.rune || 0, e.shift ? 1 : 0, e.value || 0, e.time || performance.now(), text(e.id), text(e.text)];
     queue.set(v, HEAD + count * WIDTH);
     count++;
+    if (L.hush) L.hush();                               // what waits to be read out waits for the hand to rest
     L.wake();
   };
   const oldestMove = () => {

@@ -101,7 +101,7 @@
     for (const k of keys) { const el = map.get(k); if (el !== next) parent.insertBefore(el, next); else next = next.nextSibling; }
   };
 
-  // Live regions speak after half a second without any change of what is drawn, and only what is new.
+  // Live regions speak after half a second in which nothing was done and nothing drawn changed, and only what is new.
   const waiting = new Map();
   let speaking = 0;
   const announce = (id, said) => waiting.set(id, said);
@@ -114,6 +114,7 @@
       waiting.clear();
     }, 500);
   };
+  L.hush = speakLater;
 
   const ALLOWED = /^(aria-[a-z]+|disabled|inert|tabindex|data-[a-z-]+|role)$/;
   const DO = {
